@@ -1,0 +1,84 @@
+"""The load kinds that need little: resistor, capacitor, impedance. The coil has a module of its own."""
+
+from __future__ import annotations
+
+from types import MappingProxyType
+
+from circuitlint.definition.loads import Capacitor, Impedance, Resistor
+from circuitlint.physics import phasors, steps
+from circuitlint.study.coil import CoilKind
+from circuitlint.study.data import DataSheet
+from circuitlint.study.plan import Kinds, LoadKind, Plan
+from circuitlint.study.worksheet import Key
+
+
+class ResistorKind(LoadKind[Resistor]):
+    """A resistance that does not change with temperature."""
+
+    name = "resistor"
+    model = Resistor
+    resistance_and_inductance = True
+
+    def data(self, part: Resistor, place: str, into: DataSheet) -> None:
+        """Its resistance."""
+        into.state(f"{place}.resistance", part.resistance)
+
+    def impedance(self, plan: Plan, place: str) -> Key:
+        """The resistance itself."""
+        return plan.sheet.put("impedance phasor", place, steps.resistive_impedance, figure=False,
+                              resistance=plan.datum(f"{place}.resistance"))
+
+
+class CapacitorKind(LoadKind[Capacitor]):
+    """A capacitance without loss."""
+
+    name = "capacitor"
+    model = Capacitor
+
+    def data(self, part: Capacitor, place: str, into: DataSheet) -> None:
+        """Its capacitance."""
+        into.state(f"{place}.capacitance", part.capacitance)
+
+    def impedance(self, plan: Plan, place: str) -> Key | None:
+        """Its reactance, leading; no direct current passes."""
+        if plan.direct:
+            return None
+        reactance = plan.sheet.put("reactance", place, phasors.reactance_of_capacitance,
+                                   capacitance=plan.datum(f"{place}.capacitance"), frequency=plan.datum("supply.frequency"))
+        return plan.sheet.put("impedance phasor", place, steps.capacitive_impedance, figure=False, reactance=reactance)
+
+    def figures(self, plan: Plan, place: str) -> None:
+        """The voltage across it, under its own name."""
+        if not plan.direct:
+            plan.sheet.put("capacitive-voltage", place, phasors.inductive_voltage, current=Key("current", place),
+                           reactance=Key("reactance", place))
+
+
+class ImpedanceKind(LoadKind[Impedance]):
+    """A resistance and an inductive reactance in series; the reactance follows the frequency."""
+
+    name = "impedance"
+    model = Impedance
+    resistance_and_inductance = True
+
+    def data(self, part: Impedance, place: str, into: DataSheet) -> None:
+        """Resistance and reactance, and the frequency they hold at."""
+        into.state(f"{place}.resistance", part.resistance)
+        into.state(f"{place}.reactance", part.reactance)
+
+    def impedance(self, plan: Plan, place: str) -> Key:
+        """Series impedance at the supply's frequency."""
+        resistance = plan.datum(f"{place}.resistance")
+        if plan.direct:
+            return plan.sheet.put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
+        inductance = plan.sheet.put("inductance", place, phasors.inductance_of_reactance,
+                                    reactance=plan.datum(f"{place}.reactance"),
+                                    frequency=plan.datum("supply.nominal_frequency"))
+        reactance = plan.sheet.put("reactance", place, phasors.reactance_of_inductance, inductance=inductance,
+                                   frequency=plan.datum("supply.frequency"))
+        return plan.sheet.put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance,
+                              reactance=reactance)
+
+
+CORE: Kinds = MappingProxyType({kind.name: kind for kind in (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind())})
+"""The load kinds every definition knows."""

@@ -1,0 +1,259 @@
+"""From the origin to the load: the data of a circuit, and the worksheet of each state."""
+
+from __future__ import annotations
+
+from circuitlint import si
+from circuitlint.definition.loads import LoadEntry
+from circuitlint.definition.models import Cable, CircuitEntry, Supply
+from circuitlint.errors import OutOfTable
+from circuitlint.physics import conductor_heating, conductors, phasors, power_factor, steps, switching_on
+from circuitlint.sources import Source
+from circuitlint.study.data import DataSheet
+from circuitlint.study.plan import Kinds, Node, Plan, impedance_of, share_out, write_power_figures
+from circuitlint.study.states import State
+from circuitlint.study.worksheet import Key, Worksheet
+from circuitlint.tables import ampacity, materials
+from circuitlint.tables import conductors as conductor_table
+
+COLD_REFERENCE = Source("20 °C where no ambient is stated", known="common practice")
+WARM_OR_COLD = Source("a conductor may be anywhere between its surroundings and its insulation's limit", known="derived")
+TYPICAL_REACTANCE = Source(
+    "typical reactance of multicore and single-core cables at 50 Hz, 0.07 to 0.15 Ω/km", "handbook tables", known="read"
+)
+NEED_HEAT = ("insulation", "method", "ambient", "grouped_circuits")
+
+
+def collect(entry: CircuitEntry, supply: Supply, tree: Node, load: LoadEntry, kinds: Kinds) -> DataSheet:
+    """Every number the study of one circuit starts from."""
+    sheet = DataSheet()
+    sheet.state("supply.voltage", supply.voltage)
+    _exact(sheet, "two conductors", si.RATIO, 2.0, Source("the current flows out and back"))
+    _exact(sheet, "supply.nominal_voltage", si.VOLTAGE, supply.voltage.nominal, Source("nominal voltage of the supply"))
+    if supply.frequency is not None:
+        sheet.state("supply.frequency", supply.frequency)
+        _exact(sheet, "supply.nominal_frequency", si.FREQUENCY, supply.frequency.nominal, Source("nominal frequency"))
+    if not sheet.state("ambient", entry.ambient):
+        sheet.assume("assumed ambient", si.TEMPERATURE, 20.0, 20.0, 20.0, COLD_REFERENCE)
+        sheet.lack("ambient", "ambient", why="the temperature around the load is not stated")
+    if entry.cable is None:
+        sheet.lack("cable", "cable, or `cable: []` where there is none", why="the way to the load is not stated")
+    for index, run in enumerate(entry.cable or ()):
+        _collect_cable(sheet, f"cable[{index}]", run, supply)
+    for place, kind, part in leaves_of(load, "load"):
+        kinds[kind].data(part, place, sheet)
+    return sheet
+
+
+def _exact(sheet: DataSheet, path: str, dimension: si.Dimension, value: float, source: Source) -> None:
+    sheet.assume(path, dimension, value, value, value, source)
+
+
+def _collect_cable(sheet: DataSheet, place: str, run: Cable, supply: Supply) -> None:
+    sheet.state(f"{place}.length", run.length)
+    section = run.section.nominal
+    zero, source = materials.inferred_zero(run.conductor)
+    sheet.table(f"{place}.inferred_zero", si.TEMPERATURE_RISE, zero, source)
+    try:
+        if run.conductor_class is not None:
+            value, source = conductor_table.resistance_per_metre(section, run.conductor, int(run.conductor_class))
+            sheet.table(f"{place}.resistance_per_metre", si.RESISTANCE_PER_LENGTH, value, source)
+        else:
+            value, source = conductor_table.resistance_per_metre(section, run.conductor, 2)
+            try:
+                other, _ = conductor_table.resistance_per_metre(section, run.conductor, 5)
+            except OutOfTable:
+                other = value
+            sheet.table(f"{place}.resistance_per_metre", si.RESISTANCE_PER_LENGTH, value, source,
+                        min(value, other), max(value, other))
+    except OutOfTable as error:
+        sheet.lack(f"{place}.resistance_per_metre", f"{place}.section", why=str(error))
+    if run.reactance is not None:
+        sheet.state(f"{place}.reactance", run.reactance)
+    elif supply.frequency is not None:
+        scale = 1e-3 * supply.frequency.nominal / 50.0
+        sheet.assume(f"{place}.reactance", si.RESISTANCE_PER_LENGTH, 0.1 * scale, 0.07 * scale, 0.15 * scale,
+                     TYPICAL_REACTANCE)
+    _collect_heat(sheet, place, run, 2)
+
+
+def _collect_heat(sheet: DataSheet, place: str, run: Cable, loaded: int) -> None:
+    """What the conductor's temperature needs; where it is not stated, the range it can lie in."""
+    absent = tuple(f"{place}.{word}" for word in NEED_HEAT if getattr(run, word) is None)
+    highest = ampacity.highest_temperature(run.insulation)[0] if run.insulation else 90.0
+    if not sheet.state(f"{place}.ambient", run.ambient):
+        sheet.assume(f"assumed {place}.ambient", si.TEMPERATURE, 20.0, 20.0, 20.0, COLD_REFERENCE)
+        low = nominal = 20.0
+    else:
+        assert run.ambient is not None
+        low, nominal = run.ambient.low, run.ambient.nominal
+    high = max(highest, nominal)
+    sheet.assume(f"{place}.temperature at switch-on", si.TEMPERATURE, nominal, low, high, WARM_OR_COLD)
+    if absent:
+        why = "how warm the conductor runs is not known"
+        _no_heat(sheet, place, absent, why)
+        sheet.assume(f"{place}.temperature in service", si.TEMPERATURE, high, low, high, WARM_OR_COLD)
+        return
+    assert run.insulation and run.method and run.grouped_circuits and run.ambient
+    try:
+        tabled, source = ampacity.ampacity(run.section.nominal, run.method, run.insulation, run.conductor, loaded)
+        sheet.table(f"{place}.tabled_ampacity", si.CURRENT, tabled, source)
+        factor, source = ampacity.grouping_factor(run.grouped_circuits, "bunched")
+        sheet.table(f"{place}.grouping_factor", si.RATIO, factor, source)
+    except OutOfTable as error:
+        _no_heat(sheet, place, (f"{place}.section", f"{place}.method"), str(error))
+        sheet.assume(f"{place}.temperature in service", si.TEMPERATURE, high, low, high, WARM_OR_COLD)
+        return
+    limit, source = ampacity.highest_temperature(run.insulation)
+    sheet.table(f"{place}.highest_temperature", si.TEMPERATURE, limit, source)
+    reference, source = ampacity.reference_ambient(run.method)
+    sheet.table(f"{place}.reference_ambient", si.TEMPERATURE, reference, source)
+
+
+def _no_heat(sheet: DataSheet, place: str, needs: tuple[str, ...], why: str) -> None:
+    for word in ("tabled_ampacity", "grouping_factor", "highest_temperature", "reference_ambient"):
+        sheet.data.pop(f"{place}.{word}", None)
+        sheet.lack(f"{place}.{word}", *needs, why=why)
+
+
+def leaves_of(load: LoadEntry, place: str) -> list[tuple[str, str, object]]:
+    """Place, kind and model of every leaf of a load tree, in order."""
+    kind = load.kind
+    if kind not in ("series", "parallel"):
+        return [(f"{place}.{kind}", kind, load.part)]
+    found = []
+    for index, one in enumerate(load.part):
+        found += leaves_of(one, f"{place}.{kind}[{index}]")
+    return found
+
+
+def tree_of(load: LoadEntry, place: str) -> Node:
+    """The load tree without its numbers."""
+    kind = load.kind
+    if kind not in ("series", "parallel"):
+        return Node(kind, f"{place}.{kind}")
+    below = tuple(tree_of(one, f"{place}.{kind}[{index}]") for index, one in enumerate(load.part))
+    return Node(kind, f"{place}.{kind}", below)
+
+
+def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: int, kinds: Kinds) -> Worksheet:
+    """The lines of one state, from the load upward for impedance and from the origin downward for voltage and current."""
+    plan = Plan(Worksheet(), state, system, present)
+    put = plan.sheet.put
+    if "cable" in present.lacks:
+        cables: list[Key] = [plan.datum("cable")]
+    else:
+        cables = [_cable(plan, f"cable[{index}]") for index in range(runs)]
+    load = impedance_of(plan, tree, kinds)
+    supply = "supply.nominal_voltage" if state.source == "direct current" else "supply.voltage"
+    source = put("supply phasor", "", steps.reference_phasor, figure=False, voltage=plan.datum(supply))
+    put("voltage", "", phasors.magnitude_of_voltage, voltage=source)
+    if load is None:
+        current = put("current phasor", "", steps.blocked_current, figure=False, voltage=source)
+        for key in cables:
+            if key in plan.sheet.lacks:
+                current = plan.sheet.lack("current phasor", "", *plan.sheet.lacks[key].needs)
+        terminal = put("voltage phasor", tree.place, steps.shared_voltage, figure=False, voltage=source)
+    else:
+        total = put("impedance phasor", "", phasors.series_impedance, figure=False, impedances=(*cables, load))
+        put("resistance", "", steps.resistance_part, impedance=total)
+        if not plan.direct:
+            put("reactance", "", steps.reactance_part, impedance=total)
+        put("impedance", "", steps.magnitude_of_impedance, impedance=total)
+        if not plan.direct:
+            put("impedance-angle", "", steps.angle_of_impedance, impedance=total)
+        current = put("current phasor", "", phasors.current_phasor, figure=False, voltage=source, impedance=total)
+        terminal = put("voltage phasor", tree.place, phasors.voltage_phasor, figure=False, current=current, impedance=load)
+    if load is None:
+        put("current", "", phasors.magnitude_of_current, current=current)
+    else:
+        put("current", "", steps.current_through, voltage=Key("voltage", ""), impedance=Key("impedance", ""))
+    write_power_figures(plan, "", source, current)
+    for index in range(runs):
+        _cable_figures(plan, f"cable[{index}]", current)
+    _drop(plan, terminal)
+    entry = put("current phasor", tree.place, steps.shared_current, figure=False, current=current)
+    share_out(plan, tree, kinds, terminal, entry)
+    if state.open_gap:
+        _switch_on(plan, tree, kinds)
+    return plan.sheet.finish()
+
+
+def _cable(plan: Plan, place: str) -> Key:
+    put = plan.sheet.put
+    if plan.state.open_gap:
+        temperature = plan.datum(f"{place}.temperature at switch-on")
+    elif not plan.state.hot:
+        temperature = plan.surroundings(place)
+    elif plan.has(f"{place}.tabled_ampacity"):
+        temperature = plan.sheet.guess("settled conductor temperature", place, si.TEMPERATURE)
+    else:
+        temperature = plan.datum(f"{place}.temperature in service")
+    per_metre = put("resistance-per-metre", place, conductors.conductor_resistance_at,
+                    resistance_per_length_20=plan.datum(f"{place}.resistance_per_metre"), temperature=temperature,
+                    inferred_zero=plan.datum(f"{place}.inferred_zero"))
+    resistance = put("resistance", place, conductors.run_resistance, resistance_per_length=per_metre,
+                     length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
+    if plan.direct:
+        return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
+    at_frequency = put("reactance-per-metre", place, conductors.reactance_at_frequency,
+                       reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.datum("supply.frequency"),
+                       tabled_frequency=plan.datum("supply.nominal_frequency"))
+    reactance = put("reactance", place, conductors.run_reactance, reactance_per_length=at_frequency,
+                    length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
+    return put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance, reactance=reactance)
+
+
+def _cable_figures(plan: Plan, place: str, current: Key) -> None:
+    put = plan.sheet.put
+    flow = put("current", place, phasors.magnitude_of_current, current=current)
+    share = put("voltage phasor", place, phasors.voltage_phasor, figure=False, current=current,
+                impedance=plan.phasor("impedance", place))
+    put("voltage", place, phasors.magnitude_of_voltage, voltage=share)
+    put("conductor-loss", place, power_factor.active_power, current=flow, resistance=Key("resistance", place))
+    put("loss-per-metre", place, conductor_heating.loss_per_metre, current=flow,
+        resistance_per_length=Key("resistance-per-metre", place))
+    if not plan.state.hot:
+        return
+    carried = put("grouped-ampacity", place, steps.grouped_ampacity,
+                  tabled=plan.datum(f"{place}.tabled_ampacity"), grouping_factor=plan.datum(f"{place}.grouping_factor"))
+    factor = put("ambient-factor", place, conductor_heating.ambient_factor,
+                 ambient=plan.datum(f"{place}.ambient"), highest_temperature=plan.datum(f"{place}.highest_temperature"),
+                 reference_ambient=plan.datum(f"{place}.reference_ambient"))
+    put("ampacity", place, conductor_heating.corrected_ampacity, tabled=plan.datum(f"{place}.tabled_ampacity"),
+        ambient_factor=factor, grouping_factor=plan.datum(f"{place}.grouping_factor"))
+    warm = put("conductor-temperature", place, conductor_heating.conductor_temperature, current=flow, ampacity=carried,
+               ambient=plan.datum(f"{place}.ambient"), highest_temperature=plan.datum(f"{place}.highest_temperature"),
+               reference_ambient=plan.datum(f"{place}.reference_ambient"),
+               inferred_zero=plan.datum(f"{place}.inferred_zero"))
+    if plan.has(f"{place}.tabled_ampacity"):
+        plan.sheet.settle(Key("settled conductor temperature", place), warm, plan.datum(f"{place}.ambient"))
+
+
+def _drop(plan: Plan, terminal: Key) -> None:
+    put = plan.sheet.put
+    receiving = put("terminal-voltage", "", phasors.magnitude_of_voltage, voltage=terminal)
+    drop = put("voltage-drop", "", conductors.voltage_drop, sending=Key("voltage", ""), receiving=receiving)
+    put("voltage-drop-share", "", conductors.drop_share, drop=drop, nominal=plan.datum("supply.nominal_voltage"))
+
+
+def _switch_on(plan: Plan, tree: Node, kinds: Kinds) -> None:
+    """The crest of the first current wave. The closed form holds for one current through resistance and inductance."""
+    put = plan.sheet.put
+    if plan.direct:
+        put("switch-on-peak", "", switching_on.direct_current, voltage=Key("voltage", ""),
+            resistance=Key("resistance", ""))
+        return
+    if not _one_inductive_path(tree, kinds):
+        plan.sheet.lack("switch-on-peak", "", "a load of coils, resistors and impedances in series",
+                        why="the closed form holds for one current through resistance and inductance only")
+        return
+    put("switch-on-peak", "", switching_on.switch_on_peak, current_rms=Key("current", ""),
+        resistance=Key("resistance", ""), reactance=Key("reactance", ""))
+
+
+def _one_inductive_path(node: Node, kinds: Kinds) -> bool:
+    if node.kind == "parallel":
+        return len(node.nodes) == 1 and _one_inductive_path(node.nodes[0], kinds)
+    if node.kind == "series":
+        return all(_one_inductive_path(one, kinds) for one in node.nodes)
+    return kinds[node.kind].resistance_and_inductance

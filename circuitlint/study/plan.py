@@ -1,0 +1,197 @@
+"""What a load kind writes on: a worksheet together with the data at hand and the state it is written for."""
+
+from __future__ import annotations
+
+from abc import ABC, abstractmethod
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Any, ClassVar, Generic, TypeAlias, TypeVar
+
+from pydantic import BaseModel
+
+from circuitlint.physics import phasors, power_factor, steps
+from circuitlint.study.data import DataSheet
+from circuitlint.study.states import State
+from circuitlint.study.worksheet import Key, Worksheet
+
+
+M = TypeVar("M", bound=BaseModel)
+
+
+@dataclass(slots=True)
+class Plan:
+    """One state's worksheet in the making."""
+
+    sheet: Worksheet
+    state: State
+    system: str
+    present: DataSheet
+    """Only presence, tokens and lacks may be asked of it: worksheets are shared by circuits of one signature."""
+    leaves: list[tuple[str, LoadKind[Any]]] = field(default_factory=list)
+
+    @property
+    def direct(self) -> bool:
+        """Whether the state has direct current."""
+        return self.system == "dc" or self.state.source == "direct current"
+
+    def datum(self, path: str) -> Key:
+        """The key of a datum; where it is lacking, a key that makes every figure built on it lacking."""
+        key = self.sheet.datum(path)
+        if path in self.present.lacks:
+            self.sheet.lacks[key] = self.present.lacks[path]
+        elif not self.present.has(path):
+            return self.sheet.lack("", path, path)
+        return key
+
+    def has(self, path: str) -> bool:
+        """Whether a datum is at hand."""
+        return self.present.has(path)
+
+    def surroundings(self, place: str) -> Key:
+        """The temperature around a part: as stated, else the 20 °C that cold values are given for."""
+        stated = f"{place}.ambient" if place else "ambient"
+        return self.datum(stated if self.has(stated) else f"assumed {stated}")
+
+    def token(self, path: str) -> str:
+        """A choice noted under a path, or an empty text."""
+        return self.present.tokens.get(path, "")
+
+    def phasor(self, name: str, of: str) -> Key:
+        """The key of a complex quantity of a part."""
+        return Key(f"{name} phasor", of)
+
+
+class LoadKind(ABC, Generic[M]):
+    """A kind of load: its model, the data it brings, its impedance in each state, and its own figures.
+
+    Methods are called once per shape of circuit; what they write is run over all circuits of that shape and all cases.
+    """
+
+    name: ClassVar[str]
+    """The key in a definition."""
+    model: ClassVar[type[BaseModel]]
+    """What may stand under the key."""
+    resistance_and_inductance: ClassVar[bool] = False
+    """Whether the part is a resistance and an inductance in series, so that closed forms of switching hold."""
+
+    @abstractmethod
+    def data(self, part: M, place: str, into: DataSheet) -> None:
+        """Put the part's numbers into the data sheet, under paths that begin with `place`."""
+
+    @abstractmethod
+    def impedance(self, plan: Plan, place: str) -> Key | None:
+        """Write the lines that lead to the impedance phasor and give its key; None where no direct current passes."""
+
+    def figures(self, plan: Plan, place: str) -> None:
+        """Write the part's own figures; its `current` and `voltage` are there by now."""
+
+    def label(self, part: M) -> tuple[str, ...]:
+        """What a drawing prints beside the part."""
+        return tuple(
+            f"{name.replace('_', ' ')} {value.text}"
+            for name in type(part).model_fields
+            if hasattr(value := getattr(part, name), "text")
+        )
+
+
+Kinds: TypeAlias = Mapping[str, "LoadKind[Any]"]
+
+
+@dataclass(frozen=True, slots=True)
+class Node:
+    """A place in the load tree: a leaf of some kind, or `series` or `parallel` of nodes."""
+
+    kind: str
+    place: str
+    nodes: tuple[Node, ...] = ()
+
+
+def shape_of(node: Node) -> tuple[Any, ...]:
+    """The tree as a hashable value."""
+    return (node.kind, node.place, tuple(shape_of(one) for one in node.nodes))
+
+
+def impedance_of(plan: Plan, node: Node, kinds: Kinds) -> Key | None:
+    """Write the impedance of a node from the leaves upward; None where no direct current passes."""
+    if node.kind not in ("series", "parallel"):
+        plan.leaves.append((node.place, kinds[node.kind]))
+        return kinds[node.kind].impedance(plan, node.place)
+    below = [impedance_of(plan, one, kinds) for one in node.nodes]
+    passing = tuple(key for key in below if key is not None)
+    if not passing or (node.kind == "series" and len(passing) < len(below)):
+        return None
+    joined = phasors.series_impedance if node.kind == "series" else phasors.parallel_impedance
+    return plan.sheet.put("impedance phasor", node.place, joined, figure=False, impedances=passing)
+
+
+def share_out(plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key | None, blocked: bool = False) -> None:
+    """Write voltages and currents from a node downward; `current` is None where a parallel branch finds its own."""
+    put = plan.sheet.put
+    own = plan.phasor("impedance", node.place)
+    blocked = blocked or not _passes(plan, node)
+    if current is None:
+        if blocked:
+            current = put("current phasor", node.place, steps.blocked_current, figure=False, voltage=voltage)
+        else:
+            current = put("current phasor", node.place, phasors.current_phasor, figure=False, voltage=voltage, impedance=own)
+    put("voltage", node.place, phasors.magnitude_of_voltage, voltage=voltage)
+    if blocked:
+        put("current", node.place, phasors.magnitude_of_current, current=current)
+    else:
+        write_impedance_figures(plan, node.place)
+        put("current", node.place, steps.current_through, voltage=Key("voltage", node.place),
+            impedance=Key("impedance", node.place))
+    write_power_figures(plan, node.place, voltage, current)
+    if node.kind not in ("series", "parallel"):
+        kinds[node.kind].figures(plan, node.place)
+        return
+    closed = [one for one in node.nodes if not _passes(plan, one)]
+    for one in node.nodes:
+        if node.kind == "parallel":
+            share = put("voltage phasor", one.place, steps.shared_voltage, figure=False, voltage=voltage)
+            share_out(plan, one, kinds, share, None, blocked=blocked and node.kind == "series")
+            continue
+        flow = put("current phasor", one.place, steps.shared_current, figure=False, current=current)
+        if not blocked:
+            share = put("voltage phasor", one.place, phasors.voltage_phasor, figure=False, current=flow,
+                        impedance=plan.phasor("impedance", one.place))
+        elif len(closed) == 1 and one is closed[0]:
+            share = put("voltage phasor", one.place, steps.shared_voltage, figure=False, voltage=voltage)
+        elif one in closed:
+            share = plan.sheet.lack("voltage phasor", one.place, why="direct voltage shared by capacitors in series")
+        else:
+            share = put("voltage phasor", one.place, steps.no_voltage, figure=False, voltage=voltage)
+        share_out(plan, one, kinds, share, flow, blocked)
+
+
+def write_impedance_figures(plan: Plan, place: str) -> None:
+    """Magnitude and angle of a part's impedance."""
+    phasor = plan.phasor("impedance", place)
+    plan.sheet.put("impedance", place, steps.magnitude_of_impedance, impedance=phasor)
+    if not plan.direct:
+        plan.sheet.put("impedance-angle", place, steps.angle_of_impedance, impedance=phasor)
+
+
+def write_power_figures(plan: Plan, place: str, voltage: Key, current: Key) -> None:
+    """Complex power of a part, and its active, reactive and apparent parts with the power factor."""
+    put = plan.sheet.put
+    power = put("power phasor", place, power_factor.complex_power, figure=False, voltage=voltage, current=current)
+    active = put("active-power", place, steps.active_part, power=power)
+    if plan.direct:
+        return
+    put("reactive-power", place, steps.reactive_part, power=power)
+    apparent = put("apparent-power", place, power_factor.apparent_power, voltage=Key("voltage", place),
+                   current=Key("current", place))
+    put("power-factor", place, power_factor.power_factor, active=active, apparent=apparent)
+
+
+def _passes(plan: Plan, node: Node) -> bool:
+    """Whether a steady current of the state's kind passes the node."""
+    if not plan.direct:
+        return True
+    if node.kind == "series":
+        return all(_passes(plan, one) for one in node.nodes)
+    if node.kind == "parallel":
+        return any(_passes(plan, one) for one in node.nodes)
+    key = plan.phasor("impedance", node.place)
+    return key in plan.sheet.index or key in plan.sheet.lacks
