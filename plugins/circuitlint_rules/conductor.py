@@ -1,0 +1,54 @@
+"""What the current does to the conductor."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from circuitlint.authoring import (
+    LOSS_PER_LENGTH,
+    TEMPERATURE,
+    CircuitStudy,
+    Limits,
+    LimitSpec,
+    Outcome,
+    Rule,
+    Unknown,
+    ask,
+    at_most,
+)
+
+
+class ConductorHeating(Rule):
+    """Heat per metre and conductor temperature of each run, against what its insulation bears."""
+
+    name = "conductor-heating"
+    title = "Heat in the conductor"
+    purpose = "A conductor above its insulation's temperature ages the insulation and ends in a fault or a fire."
+    applies_to = "every circuit with a cable"
+    figures = ("conductor-temperature", "loss-per-metre")
+    states = ("steady",)
+    needs = ("insulation", "method", "ambient", "grouped_circuits", "section", "the load's heat data")
+    helps = "a larger section, fewer circuits bunched together, a cooler way, or insulation of a higher class"
+    limits = {
+        "pvc_70": LimitSpec(TEMPERATURE, "highest conductor temperature of pvc-70 insulation"),
+        "xlpe_90": LimitSpec(TEMPERATURE, "highest conductor temperature of xlpe-90 insulation"),
+        "loss_per_metre": LimitSpec(LOSS_PER_LENGTH, "largest loss per metre of run, out and back together halved"),
+    }
+
+    def applies(self, circuit: CircuitStudy) -> bool:
+        """Where there is a cable, or where nothing is said of one."""
+        return circuit.entry.cable is None or len(circuit.entry.cable) > 0
+
+    def check(self, circuit: CircuitStudy, limits: Limits) -> Iterator[Outcome]:
+        """Temperature and loss of each run."""
+        if circuit.entry.cable is None:
+            yield Unknown("conductor-temperature", ("cable, or `cable: []` where there is none",), state="steady")
+            return
+        for index, run in enumerate(circuit.entry.cable):
+            place = f"cable[{index}]"
+            if run.insulation is None:
+                yield Unknown("conductor-temperature", (f"{place}.insulation",), state="steady", at=("cable", index))
+            else:
+                limit = limits.get(run.insulation.replace("-", "_"))
+                yield at_most(ask(circuit, "conductor-temperature", "steady", place), limit)
+            yield at_most(ask(circuit, "loss-per-metre", "steady", place), limits.get("loss_per_metre"))

@@ -1,0 +1,1 @@
+"""The shipped rulesets, as YAML files beside this one."""
