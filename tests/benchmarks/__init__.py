@@ -1,0 +1,1 @@
+"""Ratios of times, printed and never asserted: `python -m tests.benchmarks`."""
