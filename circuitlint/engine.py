@@ -49,7 +49,8 @@ def review(installation: Installation, ruleset: Ruleset, gathered: Gathered, opt
     assembly = Assembly(installation, ruleset, gathered.kinds, options.hold_at, options.on_date, options.figures)
     bound = bind_rules(ruleset, gathered, assembly)
     sought = {name for one in bound for name in one.rule.figures}
-    circuits = study(installation, gathered.kinds, sought)
+    states = None if options.figures else {state for one in bound for state in one.rule.states}
+    circuits = study(installation, gathered.kinds, sought, states)
     for number, circuit in enumerate(circuits):
         checks = {one.rule.name: judge_one(one, circuit, assembly) for one in bound}
         assembly.add(circuit, checks)

@@ -15,27 +15,35 @@ from circuitlint.definition.models import CircuitEntry, Concession, Material, Su
 
 
 class Gap(Entry):
-    """A coil with its armature held open: what changes against the closed gap."""
+    """A coil with its armature held open: what changes against the closed gap. One of the magnitudes will do."""
 
     inductance: f.Inductance | None = None
     reactance: f.Reactance | None = None
     impedance: f.Resistance | None = None
-    current: f.Current | None = None
-    apparent_power: f.ApparentPower | None = None
+    current: f.Current | None = Field(default=None, description="Current at rated voltage, armature open (inrush, closing).")
+    apparent_power: f.ApparentPower | None = Field(default=None, description="Demand at rated voltage, armature open.")
+    power_factor: f.Share | None = Field(default=None, description="Power factor with the armature open.")
 
 
 class Coil(Entry):
-    """A winding: resistance and inductance in series. Any sufficient set of its nameplate will do.
+    """A winding on a core. Any sufficient set of its nameplate will do; more than enough is cross-checked."""
 
-    Sufficient sets: resistance with inductance, reactance or impedance; impedance with power factor.
-    """
-
+    made_for: Literal["alternating current", "direct current"] | None = Field(
+        default=None, description="The kind of current on the coil's plate."
+    )
     resistance: f.Resistance | None = Field(default=None, description="Direct-current resistance of the winding.")
     resistance_at: f.Temperature | None = Field(default=None, description="Temperature of that resistance; 20 degC if not said.")
     inductance: f.Inductance | None = None
     reactance: f.Reactance | None = Field(default=None, description="Reactance at the rated frequency.")
     impedance: f.Resistance | None = Field(default=None, description="Impedance at the rated frequency.")
+    quality_factor: f.Share | None = Field(default=None, description="Reactance over resistance at the rated frequency.")
+    current: f.Current | None = Field(default=None, description="Current at rated voltage, armature closed (sealed, holding).")
+    active_power: f.ActivePower | None = Field(default=None, description="Power taken at rated voltage, armature closed.")
+    apparent_power: f.ApparentPower | None = Field(default=None, description="Demand at rated voltage, armature closed.")
     power_factor: f.Share | None = Field(default=None, description="Power factor of the coil alone, lagging.")
+    core_resistance: f.Resistance | None = Field(
+        default=None, description="Resistance across the inductance that stands for core loss."
+    )
     armature: Literal["none", "moving"] | None = Field(
         default=None, description="`none` for a choke whose inductance is the same at switch-on."
     )
@@ -48,23 +56,34 @@ class Coil(Entry):
 
     @model_validator(mode="after")
     def _a_sufficient_set(self) -> Coil:
-        given = {name for name in COIL_NAMEPLATE if getattr(self, name) is not None}
+        given = {name for name in type(self).model_fields if getattr(self, name) is not None}
         if not any(set(wanted) <= given for wanted in SUFFICIENT):
-            sets = "; ".join(" and ".join(wanted) for wanted in SUFFICIENT)
-            told = ", ".join(sorted(given)) or "nothing"
+            sets = "; ".join(", ".join(wanted) for wanted in SUFFICIENT)
+            told = ", ".join(name for name in COIL_NAMEPLATE if name in given) or "nothing"
             raise PydanticCustomError(
                 "nameplate", "{what}", {"what": f"{told} is not enough to know the winding", "accepted": sets}
+            )
+        if self.power_factor is not None and self.power_factor.high > 1.0:
+            raise PydanticCustomError(
+                "nameplate", "{what}", {"what": "a power factor above 1", "accepted": "a power factor up to 1, tolerance included"}
             )
         return self
 
 
-COIL_NAMEPLATE = ("resistance", "inductance", "reactance", "impedance", "power_factor")
-SUFFICIENT: tuple[tuple[str, ...], ...] = (
-    ("resistance", "inductance"),
-    ("resistance", "reactance"),
-    ("resistance", "impedance"),
-    ("impedance", "power_factor"),
+COIL_NAMEPLATE = (
+    "resistance", "inductance", "reactance", "impedance", "quality_factor", "current", "active_power", "apparent_power",
+    "power_factor",
 )
+SUFFICIENT: tuple[tuple[str, ...], ...] = (
+    ("resistance",),
+    ("impedance", "power_factor"),
+    ("rated_voltage", "current", "power_factor"),
+    ("rated_voltage", "current", "active_power"),
+    ("rated_voltage", "apparent_power", "power_factor"),
+    ("rated_voltage", "apparent_power", "active_power"),
+    ("rated_voltage", "active_power"),
+)
+"""Sets of data that tell a winding's resistance. What its inductance needs beyond them is told where it is needed."""
 
 
 class Resistor(Entry):
@@ -87,11 +106,35 @@ class Impedance(Entry):
     reactance: f.Reactance
 
 
+class Motor(Entry):
+    """A motor by its plate: constant power while it runs, constant impedance while it starts."""
+
+    shaft_power: f.ActivePower | None = None
+    efficiency: f.Share | None = None
+    current: f.Current | None = Field(default=None, description="Rated current; of a line, on three phases.")
+    power_factor: f.Share | None = Field(default=None, description="At rated load, lagging.")
+    rated_voltage: f.Voltage | None = Field(default=None, description="Between lines, on three phases.")
+    starting_ratio: f.Share | None = Field(default=None, description="Locked-rotor over rated current at rated voltage.")
+    starting_power_factor: f.Share | None = None
+
+    @model_validator(mode="after")
+    def _a_sufficient_set(self) -> Motor:
+        given = {name for name in type(self).model_fields if getattr(self, name) is not None}
+        sets = (("shaft_power", "efficiency", "power_factor"), ("rated_voltage", "current", "power_factor"))
+        if not any(set(wanted) <= given for wanted in sets):
+            raise PydanticCustomError(
+                "nameplate", "{what}", {"what": "the plate does not tell what the motor takes",
+                                        "accepted": "; ".join(", ".join(wanted) for wanted in sets)},
+            )
+        return self
+
+
 CORE_KINDS: Mapping[str, type[BaseModel]] = {
     "coil": Coil,
     "resistor": Resistor,
     "capacitor": Capacitor,
     "impedance": Impedance,
+    "motor": Motor,
 }
 
 COMPOSED = ("series", "parallel")
@@ -101,10 +144,11 @@ class LoadEntry(Entry):
     """Exactly one kind of load, or a list of loads in `series` or in `parallel`."""
 
     name: str = Field(default="", max_length=80, description="What a person calls this part.")
+    count: int = Field(default=1, ge=1, le=1000, description="How many of it stand in parallel.")
 
     @model_validator(mode="after")
     def _exactly_one_kind(self) -> LoadEntry:
-        kinds = [name for name in type(self).model_fields if name != "name"]
+        kinds = [name for name in type(self).model_fields if name not in ("name", "count")]
         given = [name for name in kinds if getattr(self, name) is not None]
         if len(given) != 1:
             what = f"a load of {len(given)} kinds ({', '.join(given)})" if given else "a load of no kind"
@@ -115,7 +159,7 @@ class LoadEntry(Entry):
     def kind(self) -> str:
         """The one kind that is given."""
         for name in type(self).model_fields:
-            if name != "name" and getattr(self, name) is not None:
+            if name not in ("name", "count") and getattr(self, name) is not None:
                 return name
         raise AssertionError("a validated load has a kind")
 

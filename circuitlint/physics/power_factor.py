@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import math
+
 import numpy as np
 
 from circuitlint.physics.formula import formula
@@ -82,3 +84,23 @@ def correction_capacitance(*, reactive_power: Var, voltage: Volt, frequency: Her
 def correction_capacitance_delta(*, reactive_power: Var, voltage: Volt, frequency: Hertz) -> Farad:
     """C = Qc / (3 · 2π · f · U²)"""
     return reactive_power / (6.0 * np.pi * frequency * voltage**2)
+
+
+@formula("C", "{Qc} / (2π · {f} · {U}²)", source=GUIDE, validity="each of three equal capacitors in star, voltage between lines",
+         reactive_power="Qc", voltage="U", frequency="f")
+def correction_capacitance_star(*, reactive_power: Var, voltage: Volt, frequency: Hertz) -> Farad:
+    """C = Qc / (2π · f · U²)"""
+    return reactive_power / (2.0 * np.pi * frequency * voltage**2)
+
+
+@formula("φ", "acos({cosφ})", source=CHAPTER_11, validity="a current that lags", power_factor="cosφ")
+def angle_of_power_factor(*, power_factor: Ratio) -> Radian:
+    """φ = acos(cosφ)"""
+    return np.arccos(power_factor)
+
+
+@formula("S", "√3 · {U} · {I}", source=Source("T. R. Kuphaldt, Lessons in Electric Circuits vol. II (AC)", "ch. 10"),
+         validity="balanced three-phase, voltage between lines, line current", voltage="U", current="I")
+def three_phase_apparent_power(*, voltage: Volt, current: Ampere) -> VoltAmpere:
+    """S = √3 · U · I"""
+    return math.sqrt(3.0) * voltage * current

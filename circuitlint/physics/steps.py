@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import cast
 
+from typing import Any
+
 import numpy as np
 
 from circuitlint.physics.formula import formula
@@ -151,3 +153,110 @@ def reference_phasor(*, voltage: Volt) -> ComplexVolt:
 def grouped_ampacity(*, tabled: Ampere, grouping_factor: Ratio) -> Ampere:
     """I = It · kg"""
     return tabled * grouping_factor
+
+
+@formula("cosφ", "{P} / ({U} · {I})", source=Source("definition of the power factor", known="derived"), active_power="P",
+         voltage="U", current="I")
+def power_factor_of_plate(*, active_power: Watt, voltage: Volt, current: Ampere) -> Ratio:
+    """cosφ = P / (U · I)"""
+    return active_power / (voltage * current)
+
+
+@formula("X", "{Q} · {R}", source=Source("definition of the quality factor", known="derived"), quality_factor="Q", resistance="R")
+def reactance_of_quality(*, quality_factor: Ratio, resistance: Ohm) -> Ohm:
+    """X = Q · R"""
+    return quality_factor * resistance
+
+
+@formula("R", "{U}² / {P}", source=Source("P = U² / R on direct current", known="derived"), voltage="U", power="P")
+def resistance_of_power(*, voltage: Volt, power: Watt) -> Ohm:
+    """R = U² / P"""
+    return voltage**2 / power
+
+
+def _core(impedance: Ohm, power_factor: Ratio, resistance: Ohm) -> Any:
+    """Admittance of the core: what is left of the plate's impedance when the winding's resistance is taken out."""
+    return 1.0 / (impedance * power_factor - resistance + 1j * impedance * np.sqrt(1.0 - power_factor**2))
+
+
+@formula(
+    "Rc", "1 / Re (1 / ({Z} · cosφ − {R} + j {Z} · sinφ)) with cosφ = {cosφ}",
+    source=Source("series resistance of the winding, core resistance across the inductance", known="derived"),
+    validity="plate power above the winding's own loss", impedance="Z", power_factor="cosφ", resistance="R",
+)
+def core_resistance_of_plate(*, impedance: Ohm, power_factor: Ratio, resistance: Ohm) -> Ohm:
+    """Rc = 1 / Re (1 / (Z · cosφ − R + j Z · sinφ))
+
+    NaN where the plate's power is not above the winding's loss.
+    """
+    conductance = np.real(_core(impedance, power_factor, resistance))
+    return np.where(conductance > 0.0, 1.0 / np.where(conductance > 0.0, conductance, 1.0), np.nan)
+
+
+@formula(
+    "X", "−1 / Im (1 / ({Z} · cosφ − {R} + j {Z} · sinφ)) with cosφ = {cosφ}",
+    source=Source("series resistance of the winding, core resistance across the inductance", known="derived"),
+    validity="plate power above the winding's own loss", impedance="Z", power_factor="cosφ", resistance="R",
+)
+def core_reactance_of_plate(*, impedance: Ohm, power_factor: Ratio, resistance: Ohm) -> Ohm:
+    """X = −1 / Im (1 / (Z · cosφ − R + j Z · sinφ))"""
+    return -1.0 / np.imag(_core(impedance, power_factor, resistance))
+
+
+@formula(
+    "Z", "{R} + 1 / (1 / {Rc} + 1 / (j {X}))", source=Source("T. R. Kuphaldt, Lessons in Electric Circuits vol. II (AC)", "ch. 5"),
+    validity="core loss as a resistance across the inductance", resistance="R", core_resistance="Rc", reactance="X",
+)
+def impedance_with_core(*, resistance: Ohm, core_resistance: Ohm, reactance: Ohm) -> ComplexOhm:
+    """Z = R + 1 / (1 / Rc + 1 / (j X))"""
+    return resistance + 1.0 / (1.0 / core_resistance - 1j / reactance)
+
+
+@formula("Pc", "{P} − {I}² · {R}", source=Source("what the winding does not lose, the core does", known="derived"), active_power="P",
+         current="I", resistance="R")
+def core_loss(*, active_power: Watt, current: Ampere, resistance: Ohm) -> Watt:
+    """Pc = P − I² · R"""
+    return active_power - current**2 * resistance
+
+
+@formula("Z", "{Z} / {n}", source=Source("equal parts in parallel", known="derived"), impedance="Z", count="n")
+def impedance_of_several(*, impedance: ComplexOhm, count: Ratio) -> ComplexOhm:
+    """Z = Z / n"""
+    return impedance / count
+
+
+@formula("P", "{P} / {η}", source=Source("electrical input = shaft power over efficiency", known="common practice"),
+         shaft_power="P", efficiency="η")
+def electrical_input(*, shaft_power: Watt, efficiency: Ratio) -> Watt:
+    """P = P / η"""
+    return shaft_power / efficiency
+
+
+@formula("S", "{P} / {cosφ}", source=Source("definition of the power factor", known="derived"), active_power="P",
+         power_factor="cosφ")
+def apparent_of_active(*, active_power: Watt, power_factor: Ratio) -> VoltAmpere:
+    """S = P / cosφ"""
+    return active_power / power_factor
+
+
+@formula(
+    "Z", "{U}² / {S} · (cosφ + j sinφ) with cosφ = {cosφ}",
+    source=Source("Z = U² / conj S", known="derived"), validity="constant power at the voltage it settles at", voltage="U",
+    apparent_power="S", power_factor="cosφ",
+)
+def impedance_of_demand(*, voltage: Volt, apparent_power: VoltAmpere, power_factor: Ratio) -> ComplexOhm:
+    """Z = U² / S · (cosφ + j sinφ)"""
+    return voltage**2 / apparent_power * (power_factor + 1j * np.sqrt(1.0 - power_factor**2))
+
+
+@formula("I", "{S} / {U}", source=Source("definition of apparent power", known="derived"), apparent_power="S", voltage="U")
+def current_of_demand(*, apparent_power: VoltAmpere, voltage: Volt) -> Ampere:
+    """I = S / U"""
+    return apparent_power / voltage
+
+
+@formula("S", "{k} · {S}", source=Source("locked-rotor demand goes with locked-rotor current", known="common practice"),
+         apparent_power="S", ratio="k")
+def starting_demand(*, apparent_power: VoltAmpere, ratio: Ratio) -> VoltAmpere:
+    """S = k · S"""
+    return ratio * apparent_power

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Hashable, Iterator, Sequence
 
 from circuitlint.review import changes as c
 from circuitlint.review import moves
@@ -60,27 +60,50 @@ def _paired(
     before: Sequence[Circuit], after: Sequence[Circuit]
 ) -> tuple[list[tuple[Circuit, Circuit]], list[Circuit], list[Circuit]]:
     """Circuits of one tag, or of another tag and otherwise alike; those only after; those only before."""
-    earlier = {one.tag: one for one in before}
-    tags = {one.tag for one in after}
-    loose = [one for one in before if one.tag not in tags]
+    earlier, later = _numbered(before), _numbered(after)
+    loose = _by_likeness(earlier, later)
+    strange = _by_likeness(later, earlier)
     pairs: list[tuple[Circuit, Circuit]] = []
     added: list[Circuit] = []
-    for one in after:
-        old = earlier.get(one.tag)
+    for key, one in later.items():
+        old = earlier.get(key)
         if old is None:
-            twins = [each for each in loose if _alike(each, one)]
-            if len(twins) != 1 or sum(_alike(twins[0], each) for each in after if each.tag not in earlier) != 1:
+            twins = loose.get(_likeness(one), [])
+            if len(twins) != 1 or len(strange[_likeness(one)]) != 1:
                 added.append(one)
                 continue
-            old = twins[0]
-            loose.remove(old)
+            old = twins.pop()
         pairs.append((old, one))
-    return pairs, added, loose
+    removed = {id(one) for some in loose.values() for one in some}
+    return pairs, added, [one for one in before if id(one) in removed]
 
 
-def _alike(one: Circuit, other: Circuit) -> bool:
-    """Whether two circuits serve the same thing by the same parts."""
-    return (one.serves, one.fed_from, one.system, one.tree) == (other.serves, other.fed_from, other.system, other.tree)
+_Numbered = dict[tuple[str, int], Circuit]
+
+
+def _numbered(circuits: Sequence[Circuit]) -> _Numbered:
+    """Circuits by tag, and a number among those of one tag: a stored record may have been put together by anybody."""
+    found: _Numbered = {}
+    for one in circuits:
+        number = 0
+        while (one.tag, number) in found:
+            number += 1
+        found[one.tag, number] = one
+    return found
+
+
+def _likeness(circuit: Circuit) -> Hashable:
+    """What two circuits share that serve the same thing by the same parts."""
+    return circuit.serves, circuit.fed_from, circuit.system, circuit.tree
+
+
+def _by_likeness(circuits: _Numbered, others: _Numbered) -> dict[Hashable, list[Circuit]]:
+    """The circuits that the others do not have by tag, in groups alike."""
+    groups: dict[Hashable, list[Circuit]] = {}
+    for key, one in circuits.items():
+        if key not in others:
+            groups.setdefault(_likeness(one), []).append(one)
+    return groups
 
 
 def _findings(pair: tuple[Circuit | None, Circuit | None], hold_at: str) -> Iterator[c.FindingChange]:

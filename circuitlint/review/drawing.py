@@ -37,6 +37,9 @@ def tree(circuit: CircuitStudy, kinds: Kinds) -> Element:
 def _load(load: LoadEntry, place: str, kinds: Kinds) -> Element:
     kind = load.kind
     of = f"{place}.{kind}"
+    if load.count != 1:
+        one = load.model_copy(update={"count": 1})
+        return Element(of=place, kind="several", label=f"{load.count} of", parts=(_load(one, place, kinds),))
     if kind in ("series", "parallel"):
         below = tuple(_load(one, f"{of}[{index}]", kinds) for index, one in enumerate(load.part))
         return Element(of=of, kind=kind, label=load.name, parts=below)

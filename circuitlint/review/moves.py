@@ -99,9 +99,12 @@ def moved(before: float, after: float, dimension: str) -> bool:
 
 def figures(old: Circuit, new: Circuit) -> Iterator[c.FigureMove]:
     """Figures given on both sides of which an end or the nominal value moved."""
-    earlier = {(one.name, one.of, one.state): one for one in old.figures}
+    earlier = {(one.name, one.of, one.state): one for one in reversed(old.figures)}
+    told: set[tuple[str, str, str]] = set()
     for now in new.figures:
-        was = earlier.get((now.name, now.of, now.state))
+        key = now.name, now.of, now.state
+        was = earlier.get(key) if key not in told else None
+        told.add(key)
         if was is None or was.dimension != now.dimension:
             continue
         ends_before, ends_after = _ends(was), _ends(now)

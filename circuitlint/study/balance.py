@@ -30,7 +30,7 @@ def imbalance(values: Mapping[Key, Any], tree: Node, runs: int) -> RealArray:
     along = [values.get(Key("voltage phasor", place)) for place in (*cables, tree.place)]
     worst = np.maximum(worst, _apart([values.get(Key("supply phasor", ""))], along))
     for node in _inner(tree):
-        word = "voltage phasor" if node.kind == "series" else "current phasor"
+        word = "current phasor" if node.kind == "parallel" else "voltage phasor"
         below = [values.get(Key(word, one.place)) for one in node.nodes]
         worst = np.maximum(worst, _apart([values.get(Key(word, node.place))], below))
     return np.asarray(worst, dtype=float)
@@ -55,6 +55,9 @@ def _apart(whole: list[Any], parts: list[Any]) -> Any:
 
 
 def _leaves(node: Node) -> list[str]:
+    """Places whose power adds up to the load's; of several equal loads, the place of all of them together."""
+    if node.kind == "several":
+        return [node.place]
     return [place for one in node.nodes for place in _leaves(one)] if node.nodes else [node.place]
 
 

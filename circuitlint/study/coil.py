@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from circuitlint import si
-from circuitlint.definition.loads import Coil, Gap
-from circuitlint.physics import coil_heating, phasors, power_factor, steps, switching_on
+from circuitlint.definition.loads import COIL_NAMEPLATE, Coil, Gap
+from circuitlint.physics import coil_closing, coil_heating, phasors, power_factor, steps, switching_on
 from circuitlint.sources import Source
+from circuitlint.study import nameplate
 from circuitlint.study.data import DataSheet
 from circuitlint.study.plan import LoadKind, Plan
 from circuitlint.study.worksheet import Key
@@ -15,6 +16,8 @@ REFERENCE = 20.0
 RATED_AMBIENT = Source("IEC 60947-1", "6.1.1, upper ambient temperature in service", known="value from memory")
 CONVENTION = Source("winding resistances are stated at 20 °C unless said otherwise", known="common practice")
 RATED_AS_SUPPLIED = Source("rated for the supply it is fed from, where the plate says nothing else", known="common practice")
+PLATE = Source("the coil's plate")
+HEAT_NOT_KNOWN = "how warm the winding runs is not known"
 
 
 class CoilKind(LoadKind[Coil]):
@@ -26,15 +29,14 @@ class CoilKind(LoadKind[Coil]):
 
     def data(self, part: Coil, place: str, into: DataSheet) -> None:
         """The nameplate as it stands, the winding's material, and what its heating needs."""
-        for word in ("resistance", "inductance", "reactance", "impedance", "power_factor", "thermal_resistance",
-                     "temperature_rise"):
+        for word in (*COIL_NAMEPLATE, "core_resistance", "thermal_resistance", "temperature_rise"):
             into.state(f"{place}.{word}", getattr(part, word))
         if not into.state(f"{place}.resistance_at", part.resistance_at):
             into.assume(f"{place}.resistance_at", si.TEMPERATURE, REFERENCE, REFERENCE, REFERENCE, CONVENTION)
         zero, source = materials.inferred_zero(part.winding)
         into.table(f"{place}.inferred_zero", si.TEMPERATURE_RISE, zero, source)
         into.token(f"{place}.armature", part.armature or "")
-        into.token(f"{place}.alone", "yes" if place.count(".") == 1 else "")
+        into.token(f"{place}.made_for", part.made_for or "")
         self._rated(part, place, into)
         if part.open_gap is not None:
             for word in Gap.model_fields:
@@ -46,32 +48,29 @@ class CoilKind(LoadKind[Coil]):
             stated = getattr(part, f"rated_{word}")
             supply = into.data.get(f"supply.nominal_{word}")
             if stated is not None:
-                into.assume(path, dimension, stated.nominal, stated.nominal, stated.nominal,
-                            Source("the coil's plate", known="read"))
+                into.token(path, "stated")
+                into.assume(path, dimension, stated.nominal, stated.nominal, stated.nominal, PLATE)
             elif supply is not None and (word == "frequency" or place.count(".") == 1):
                 into.assume(path, dimension, supply.nominal, supply.nominal, supply.nominal, RATED_AS_SUPPLIED)
         if part.temperature_rise is not None and part.thermal_resistance is None:
             into.assume(f"{place}.rated_ambient", si.TEMPERATURE, 40.0, 40.0, 40.0, RATED_AMBIENT)
 
     def impedance(self, plan: Plan, place: str) -> Key:
-        """Winding at the state's temperature, inductance of the state's gap."""
+        """Winding at the state's temperature, inductance of the state's gap, core loss where the plate tells it."""
+        put = plan.sheet.put
         resistance = self._resistance(plan, place)
         if plan.direct:
-            return plan.sheet.put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
-        reactance = plan.sheet.put("reactance", place, phasors.reactance_of_inductance,
-                                   inductance=self._inductance(plan, place), frequency=plan.datum("supply.frequency"))
-        return plan.sheet.put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance,
-                              reactance=reactance)
-
-    def _reference_resistance(self, plan: Plan, place: str) -> Key:
-        if plan.has(f"{place}.resistance"):
-            return plan.datum(f"{place}.resistance")
-        return plan.sheet.put("reference-resistance", place, phasors.resistance_from_impedance,
-                              impedance=plan.datum(f"{place}.impedance"), power_factor=plan.datum(f"{place}.power_factor"))
+            return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
+        reactance = put("reactance", place, phasors.reactance_of_inductance, inductance=self._inductance(plan, place),
+                        frequency=plan.frequency())
+        if nameplate.has_core(plan, place):
+            return put("impedance phasor", place, steps.impedance_with_core, figure=False, resistance=resistance,
+                       core_resistance=nameplate.core_resistance(plan, place), reactance=reactance)
+        return put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance, reactance=reactance)
 
     def _at(self, plan: Plan, place: str, temperature: Key, name: str) -> Key:
         return plan.sheet.put(name, place, coil_heating.winding_resistance_at,
-                              resistance=self._reference_resistance(plan, place), temperature=temperature,
+                              resistance=nameplate.reference_resistance(plan, place), temperature=temperature,
                               reference_temperature=plan.datum(f"{place}.resistance_at"),
                               inferred_zero=plan.datum(f"{place}.inferred_zero"))
 
@@ -83,8 +82,8 @@ class CoilKind(LoadKind[Coil]):
         lacking = [plan.sheet.lacks[key] for key in (thermal, ambient) if key in plan.sheet.lacks]
         if lacking:
             needs = tuple(dict.fromkeys(need for lack in lacking for need in lack.needs))
-            plan.sheet.lack("winding-temperature", place, *needs, why="how warm the winding runs is not known")
-            return plan.sheet.lack("resistance", place, *needs, why="how warm the winding runs is not known")
+            plan.sheet.lack("winding-temperature", place, *needs, why=HEAT_NOT_KNOWN)
+            return plan.sheet.lack("resistance", place, *needs, why=HEAT_NOT_KNOWN)
         guess = plan.sheet.guess("settled winding temperature", place, si.TEMPERATURE)
         return self._at(plan, place, guess, "resistance")
 
@@ -95,92 +94,68 @@ class CoilKind(LoadKind[Coil]):
         if not plan.has(f"{place}.rated_voltage"):
             needs.append(f"{place}.rated_voltage")
         if needs:
-            return plan.sheet.lack("thermal-resistance", place, *needs, why="how warm the winding runs is not known")
+            return plan.sheet.lack("thermal-resistance", place, *needs, why=HEAT_NOT_KNOWN)
+        return self._rated_rise_over_loss(plan, place)
+
+    def _rated_rise_over_loss(self, plan: Plan, place: str) -> Key:
         put = plan.sheet.put
         rise = plan.datum(f"{place}.temperature_rise")
         warm = put("rated-temperature", place, steps.warmed_temperature, ambient=plan.datum(f"{place}.rated_ambient"), rise=rise)
         resistance = self._at(plan, place, warm, "rated-resistance")
         if plan.system == "dc":
-            impedance = resistance
+            phasor = put("rated impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
         else:
             reactance = put("rated-reactance", place, phasors.reactance_of_inductance,
-                            inductance=self._closed_inductance(plan, place), frequency=plan.datum(f"{place}.rated_frequency"))
-            impedance = put("rated-impedance", place, phasors.impedance_of, resistance=resistance, reactance=reactance)
-        current = put("rated-current", place, steps.current_through, voltage=plan.datum(f"{place}.rated_voltage"), impedance=impedance)
-        loss = put("rated-loss", place, power_factor.active_power, current=current, resistance=resistance)
+                            inductance=nameplate.closed_inductance(plan, place),
+                            frequency=plan.datum(f"{place}.rated_frequency"))
+            if nameplate.has_core(plan, place):
+                phasor = put("rated impedance phasor", place, steps.impedance_with_core, figure=False, resistance=resistance,
+                             core_resistance=nameplate.core_resistance(plan, place), reactance=reactance)
+            else:
+                phasor = put("rated impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance,
+                             reactance=reactance)
+        impedance = put("rated-impedance", place, steps.magnitude_of_impedance, impedance=phasor)
+        current = put("rated-current", place, steps.current_through, voltage=plan.datum(f"{place}.rated_voltage"),
+                      impedance=impedance)
+        loss = put("rated-loss", place, power_factor.active_power, current=current,
+                   resistance=put("rated-loss-resistance", place, steps.resistance_part, impedance=phasor))
         return put("thermal-resistance", place, coil_heating.thermal_resistance, rise=rise, loss=loss)
-
-    def _closed_inductance(self, plan: Plan, place: str) -> Key:
-        if plan.has(f"{place}.inductance"):
-            return plan.datum(f"{place}.inductance")
-        put = plan.sheet.put
-        if plan.has(f"{place}.reactance"):
-            reactance = plan.datum(f"{place}.reactance")
-        elif plan.has(f"{place}.power_factor"):
-            reactance = put("reference-reactance", place, phasors.reactance_from_impedance,
-                            impedance=plan.datum(f"{place}.impedance"), power_factor=plan.datum(f"{place}.power_factor"))
-        else:
-            reactance = put("reference-reactance", place, phasors.reactance_from_resistance,
-                            impedance=plan.datum(f"{place}.impedance"), resistance=plan.datum(f"{place}.resistance"))
-        return put("inductance", place, phasors.inductance_of_reactance, reactance=reactance,
-                   frequency=plan.datum(f"{place}.rated_frequency"))
 
     def _inductance(self, plan: Plan, place: str) -> Key:
         if not plan.state.open_gap or plan.token(f"{place}.armature") == "none":
-            return self._closed_inductance(plan, place)
-        return self._open_inductance(plan, place)
-
-    def _open_inductance(self, plan: Plan, place: str) -> Key:
-        gap = f"{place}.open_gap"
-        if plan.has(f"{gap}.inductance"):
-            return plan.datum(f"{gap}.inductance")
-        put = plan.sheet.put
-        resistance = self._reference_resistance(plan, place)
-        if plan.has(f"{gap}.reactance"):
-            reactance = plan.datum(f"{gap}.reactance")
-        elif plan.has(f"{gap}.impedance"):
-            reactance = put("open-gap-reactance", place, phasors.reactance_from_resistance,
-                            impedance=plan.datum(f"{gap}.impedance"), resistance=resistance)
-        elif plan.has(f"{gap}.current") and plan.has(f"{place}.rated_voltage"):
-            impedance = put("open-gap-impedance", place, steps.impedance_from_current,
-                            voltage=plan.datum(f"{place}.rated_voltage"), current=plan.datum(f"{gap}.current"))
-            reactance = put("open-gap-reactance", place, phasors.reactance_from_resistance, impedance=impedance,
-                            resistance=resistance)
-        elif plan.has(f"{gap}.apparent_power") and plan.has(f"{place}.rated_voltage"):
-            impedance = put("open-gap-impedance", place, steps.impedance_from_apparent_power,
-                            voltage=plan.datum(f"{place}.rated_voltage"), apparent_power=plan.datum(f"{gap}.apparent_power"))
-            reactance = put("open-gap-reactance", place, phasors.reactance_from_resistance, impedance=impedance,
-                            resistance=resistance)
-        else:
-            return plan.sheet.lack("inductance", place, f"{place}.open_gap, or `armature: none`",
-                                   why="the inductance with the armature open is not stated")
-        return put("inductance", place, phasors.inductance_of_reactance, reactance=reactance,
-                   frequency=plan.datum(f"{place}.rated_frequency"))
+            return nameplate.closed_inductance(plan, place)
+        return nameplate.open_inductance(plan, place)
 
     def figures(self, plan: Plan, place: str) -> None:
-        """Voltages across its resistance and inductance, loss, temperature, time constant, stored energy."""
+        """Voltages across its resistance and inductance, losses, temperature, time constant, stored energy, flux."""
         put = plan.sheet.put
         current, resistance = Key("current", place), Key("resistance", place)
+        inductance = self._inductance(plan, place)
         put("resistive-voltage", place, phasors.resistive_voltage, current=current, resistance=resistance)
-        loss = put("winding-loss", place, power_factor.active_power, current=current, resistance=resistance)
-        inductance = self._inductance_of_state(plan, place)
+        put("winding-loss", place, power_factor.active_power, current=current, resistance=resistance)
         put("time-constant", place, switching_on.time_constant, inductance=inductance, resistance=resistance)
         if plan.direct:
             put("stored-energy", place, switching_on.stored_energy, inductance=inductance, current=current)
         else:
-            put("inductive-voltage", place, phasors.inductive_voltage, current=current, reactance=Key("reactance", place))
-            put("stored-energy", place, steps.stored_energy_at_crest, note="at the current's crest",
-                inductance=inductance, current=current)
+            self._alternating(plan, place, inductance)
+        if plan.state.name == "cold":
+            nameplate.derived_again(plan, place)
         if plan.state.hot and plan.sheet.has(resistance):
-            rise = put("winding-rise", place, coil_heating.winding_rise, loss=loss,
+            rise = put("winding-rise", place, coil_heating.winding_rise, loss=Key("active-power", place),
                        thermal_resistance=self._thermal_resistance(plan, place))
             warm = put("winding-temperature", place, steps.warmed_temperature, ambient=plan.datum("ambient"), rise=rise)
             plan.sheet.settle(Key("settled winding temperature", place), warm, plan.datum("ambient"))
 
-    def _inductance_of_state(self, plan: Plan, place: str) -> Key:
-        line = plan.sheet.index.get(Key("reactance", place))
-        if line is not None:
-            key = line.arguments["inductance"]
-            assert isinstance(key, Key)
-            return key
-        return self._inductance(plan, place)
+    def _alternating(self, plan: Plan, place: str, inductance: Key) -> None:
+        put = plan.sheet.put
+        current = Key("current", place)
+        if nameplate.has_core(plan, place):
+            put("core-loss", place, steps.core_loss, active_power=Key("active-power", place), current=current,
+                resistance=Key("resistance", place))
+        else:
+            put("inductive-voltage", place, phasors.inductive_voltage, current=current, reactance=Key("reactance", place))
+        put("stored-energy", place, steps.stored_energy_at_crest, note="at the current's crest", inductance=inductance,
+            current=current)
+        if plan.has(f"{place}.rated_voltage") and plan.has(f"{place}.rated_frequency"):
+            put("flux-ratio", place, coil_closing.flux_ratio, voltage=Key("voltage", place), frequency=plan.frequency(),
+                rated_voltage=plan.datum(f"{place}.rated_voltage"), rated_frequency=plan.datum(f"{place}.rated_frequency"))

@@ -8,6 +8,7 @@ from circuitlint.definition.loads import Capacitor, Impedance, Resistor
 from circuitlint.physics import phasors, steps
 from circuitlint.study.coil import CoilKind
 from circuitlint.study.data import DataSheet
+from circuitlint.study.motor import MotorKind
 from circuitlint.study.plan import Kinds, LoadKind, Plan
 from circuitlint.study.worksheet import Key
 
@@ -44,7 +45,7 @@ class CapacitorKind(LoadKind[Capacitor]):
         if plan.direct:
             return None
         reactance = plan.sheet.put("reactance", place, phasors.reactance_of_capacitance,
-                                   capacitance=plan.datum(f"{place}.capacitance"), frequency=plan.datum("supply.frequency"))
+                                   capacitance=plan.datum(f"{place}.capacitance"), frequency=plan.frequency())
         return plan.sheet.put("impedance phasor", place, steps.capacitive_impedance, figure=False, reactance=reactance)
 
     def figures(self, plan: Plan, place: str) -> None:
@@ -75,10 +76,10 @@ class ImpedanceKind(LoadKind[Impedance]):
                                     reactance=plan.datum(f"{place}.reactance"),
                                     frequency=plan.datum("supply.nominal_frequency"))
         reactance = plan.sheet.put("reactance", place, phasors.reactance_of_inductance, inductance=inductance,
-                                   frequency=plan.datum("supply.frequency"))
+                                   frequency=plan.frequency())
         return plan.sheet.put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance,
                               reactance=reactance)
 
 
-CORE: Kinds = MappingProxyType({kind.name: kind for kind in (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind())})
+CORE: Kinds = MappingProxyType({kind.name: kind for kind in (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind(), MotorKind())})
 """The load kinds every definition knows."""

@@ -20,6 +20,7 @@ WARM_OR_COLD = Source("a conductor may be anywhere between its surroundings and 
 TYPICAL_REACTANCE = Source(
     "typical reactance of multicore and single-core cables at 50 Hz, 0.07 to 0.15 Ω/km", "handbook tables", known="read"
 )
+OTHER = Source("IEC 60038", "50 Hz and 60 Hz are the mains frequencies", known="value from memory")
 NEED_HEAT = ("insulation", "method", "ambient", "grouped_circuits")
 
 
@@ -27,11 +28,17 @@ def collect(entry: CircuitEntry, supply: Supply, tree: Node, load: LoadEntry, ki
     """Every number the study of one circuit starts from."""
     sheet = DataSheet()
     sheet.state("supply.voltage", supply.voltage)
+    at = supply.frequency.nominal if supply.frequency else 50.0
+    _exact(sheet, "cable frequency", si.FREQUENCY, at, Source("the cables' reactance holds at the supply's frequency"))
     _exact(sheet, "two conductors", si.RATIO, 2.0, Source("the current flows out and back"))
     _exact(sheet, "supply.nominal_voltage", si.VOLTAGE, supply.voltage.nominal, Source("nominal voltage of the supply"))
     if supply.frequency is not None:
         sheet.state("supply.frequency", supply.frequency)
         _exact(sheet, "supply.nominal_frequency", si.FREQUENCY, supply.frequency.nominal, Source("nominal frequency"))
+        other = 60.0 if abs(supply.frequency.nominal - 50.0) < abs(supply.frequency.nominal - 60.0) else 50.0
+        _exact(sheet, "other frequency", si.FREQUENCY, other, OTHER)
+    else:
+        _exact(sheet, "mains frequency", si.FREQUENCY, 50.0, OTHER)
     if not sheet.state("ambient", entry.ambient):
         sheet.assume("assumed ambient", si.TEMPERATURE, 20.0, 20.0, 20.0, COLD_REFERENCE)
         sheet.lack("ambient", "ambient", why="the temperature around the load is not stated")
@@ -39,6 +46,8 @@ def collect(entry: CircuitEntry, supply: Supply, tree: Node, load: LoadEntry, ki
         sheet.lack("cable", "cable, or `cable: []` where there is none", why="the way to the load is not stated")
     for index, run in enumerate(entry.cable or ()):
         _collect_cable(sheet, f"cable[{index}]", run, supply)
+    for place, number in counts_of(load, "load"):
+        _exact(sheet, f"{place}.count", si.RATIO, float(number), Source("the definition"))
     for place, kind, part in leaves_of(load, "load"):
         kinds[kind].data(part, place, sheet)
     return sheet
@@ -69,8 +78,8 @@ def _collect_cable(sheet: DataSheet, place: str, run: Cable, supply: Supply) -> 
         sheet.lack(f"{place}.resistance_per_metre", f"{place}.section", why=str(error))
     if run.reactance is not None:
         sheet.state(f"{place}.reactance", run.reactance)
-    elif supply.frequency is not None:
-        scale = 1e-3 * supply.frequency.nominal / 50.0
+    else:
+        scale = 1e-3 * (supply.frequency.nominal if supply.frequency else 50.0) / 50.0
         sheet.assume(f"{place}.reactance", si.RESISTANCE_PER_LENGTH, 0.1 * scale, 0.07 * scale, 0.15 * scale,
                      TYPICAL_REACTANCE)
     _collect_heat(sheet, place, run, 2)
@@ -126,13 +135,24 @@ def leaves_of(load: LoadEntry, place: str) -> list[tuple[str, str, object]]:
     return found
 
 
+def counts_of(load: LoadEntry, place: str) -> list[tuple[str, int]]:
+    """Places where several equal loads stand, with their number."""
+    found = [(place, load.count)] if load.count != 1 else []
+    if load.kind in ("series", "parallel"):
+        for index, one in enumerate(load.part):
+            found += counts_of(one, f"{place}.{load.kind}[{index}]")
+    return found
+
+
 def tree_of(load: LoadEntry, place: str) -> Node:
     """The load tree without its numbers."""
     kind = load.kind
-    if kind not in ("series", "parallel"):
-        return Node(kind, f"{place}.{kind}")
-    below = tuple(tree_of(one, f"{place}.{kind}[{index}]") for index, one in enumerate(load.part))
-    return Node(kind, f"{place}.{kind}", below)
+    if kind in ("series", "parallel"):
+        below = tuple(tree_of(one, f"{place}.{kind}[{index}]") for index, one in enumerate(load.part))
+        node = Node(kind, f"{place}.{kind}", below)
+    else:
+        node = Node(kind, f"{place}.{kind}")
+    return node if load.count == 1 else Node("several", place, (node,))
 
 
 def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: int, kinds: Kinds) -> Worksheet:
@@ -144,7 +164,7 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: i
     else:
         cables = [_cable(plan, f"cable[{index}]") for index in range(runs)]
     load = impedance_of(plan, tree, kinds)
-    supply = "supply.nominal_voltage" if state.source == "direct current" else "supply.voltage"
+    supply = "supply.voltage" if state.source in ("as supplied", "other frequency") else "supply.nominal_voltage"
     source = put("supply phasor", "", steps.reference_phasor, figure=False, voltage=plan.datum(supply))
     put("voltage", "", phasors.magnitude_of_voltage, voltage=source)
     if load is None:
@@ -173,14 +193,14 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: i
     _drop(plan, terminal)
     entry = put("current phasor", tree.place, steps.shared_current, figure=False, current=current)
     share_out(plan, tree, kinds, terminal, entry)
-    if state.open_gap:
+    if state.name == "switch-on":
         _switch_on(plan, tree, kinds)
     return plan.sheet.finish()
 
 
 def _cable(plan: Plan, place: str) -> Key:
     put = plan.sheet.put
-    if plan.state.open_gap:
+    if plan.state.open_gap and not plan.state.hot:
         temperature = plan.datum(f"{place}.temperature at switch-on")
     elif not plan.state.hot:
         temperature = plan.surroundings(place)
@@ -196,8 +216,7 @@ def _cable(plan: Plan, place: str) -> Key:
     if plan.direct:
         return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
     at_frequency = put("reactance-per-metre", place, conductors.reactance_at_frequency,
-                       reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.datum("supply.frequency"),
-                       tabled_frequency=plan.datum("supply.nominal_frequency"))
+                       reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.frequency(), tabled_frequency=plan.datum("cable frequency"))
     reactance = put("reactance", place, conductors.run_reactance, reactance_per_length=at_frequency,
                     length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
     return put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance, reactance=reactance)
@@ -254,6 +273,6 @@ def _switch_on(plan: Plan, tree: Node, kinds: Kinds) -> None:
 def _one_inductive_path(node: Node, kinds: Kinds) -> bool:
     if node.kind == "parallel":
         return len(node.nodes) == 1 and _one_inductive_path(node.nodes[0], kinds)
-    if node.kind == "series":
+    if node.kind in ("series", "several"):
         return all(_one_inductive_path(one, kinds) for one in node.nodes)
     return kinds[node.kind].resistance_and_inductance

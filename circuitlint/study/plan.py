@@ -32,7 +32,14 @@ class Plan:
     @property
     def direct(self) -> bool:
         """Whether the state has direct current."""
+        if self.state.source == "alternating current":
+            return False
         return self.system == "dc" or self.state.source == "direct current"
+
+    def frequency(self) -> Key:
+        """The frequency of the state."""
+        named = {"other frequency": "other frequency", "alternating current": "mains frequency"}
+        return self.datum(named.get(self.state.source, "supply.frequency"))
 
     def datum(self, path: str) -> Key:
         """The key of a datum; where it is lacking, a key that makes every figure built on it lacking."""
@@ -94,6 +101,9 @@ class LoadKind(ABC, Generic[M]):
         )
 
 
+COMPOSED = ("series", "parallel", "several")
+"""Kinds of node that are not loads themselves; `several` is a number of equal loads in parallel."""
+
 Kinds: TypeAlias = Mapping[str, "LoadKind[Any]"]
 
 
@@ -113,7 +123,13 @@ def shape_of(node: Node) -> tuple[Any, ...]:
 
 def impedance_of(plan: Plan, node: Node, kinds: Kinds) -> Key | None:
     """Write the impedance of a node from the leaves upward; None where no direct current passes."""
-    if node.kind not in ("series", "parallel"):
+    if node.kind == "several":
+        one = impedance_of(plan, node.nodes[0], kinds)
+        if one is None:
+            return None
+        return plan.sheet.put("impedance phasor", node.place, steps.impedance_of_several, figure=False, impedance=one,
+                              count=plan.datum(f"{node.place}.count"))
+    if node.kind not in COMPOSED:
         plan.leaves.append((node.place, kinds[node.kind]))
         return kinds[node.kind].impedance(plan, node.place)
     below = [impedance_of(plan, one, kinds) for one in node.nodes]
@@ -142,14 +158,14 @@ def share_out(plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key |
         put("current", node.place, steps.current_through, voltage=Key("voltage", node.place),
             impedance=Key("impedance", node.place))
     write_power_figures(plan, node.place, voltage, current)
-    if node.kind not in ("series", "parallel"):
+    if node.kind not in COMPOSED:
         kinds[node.kind].figures(plan, node.place)
         return
     closed = [one for one in node.nodes if not _passes(plan, one)]
     for one in node.nodes:
-        if node.kind == "parallel":
+        if node.kind != "series":
             share = put("voltage phasor", one.place, steps.shared_voltage, figure=False, voltage=voltage)
-            share_out(plan, one, kinds, share, None, blocked=blocked and node.kind == "series")
+            share_out(plan, one, kinds, share, None)
             continue
         flow = put("current phasor", one.place, steps.shared_current, figure=False, current=current)
         if not blocked:
@@ -191,7 +207,7 @@ def _passes(plan: Plan, node: Node) -> bool:
         return True
     if node.kind == "series":
         return all(_passes(plan, one) for one in node.nodes)
-    if node.kind == "parallel":
+    if node.kind in ("parallel", "several"):
         return any(_passes(plan, one) for one in node.nodes)
     key = plan.phasor("impedance", node.place)
     return key in plan.sheet.index or key in plan.sheet.lacks

@@ -174,8 +174,10 @@ def leads_or_lags(reactive: float) -> str:
     return "lagging" if reactive > 0.0 else "leading" if reactive < 0.0 else ""
 
 
-def study(installation: Installation, kinds: Kinds, sought: Collection[str] | None = None) -> list[CircuitStudy]:
-    """Study every circuit of an installation in every state that its supply allows.
+def study(
+    installation: Installation, kinds: Kinds, sought: Collection[str] | None = None, wanted: Collection[str] | None = None
+) -> list[CircuitStudy]:
+    """Study every circuit of an installation in every state that its supply allows, or in the states wanted by name.
 
     `sought` names the figures whose extremes are refined; None refines all. The order of the circuits is kept.
     """
@@ -191,11 +193,13 @@ def study(installation: Installation, kinds: Kinds, sought: Collection[str] | No
         key = (supply.system, shape_of(tree), len(entry.cable or ()), one.data.signature())
         groups.setdefault(key, []).append(one)
     for group in groups.values():
-        _study_group(group, kinds, sought)
+        _study_group(group, kinds, sought, wanted)
     return studies
 
 
-def _study_group(group: list[CircuitStudy], kinds: Kinds, sought: Collection[str] | None) -> None:
+def _study_group(
+    group: list[CircuitStudy], kinds: Kinds, sought: Collection[str] | None, wanted: Collection[str] | None
+) -> None:
     first = group[0]
     runs = len(first.entry.cable or ())
     table = {
@@ -204,7 +208,7 @@ def _study_group(group: list[CircuitStudy], kinds: Kinds, sought: Collection[str
     }
     for position, one in enumerate(group):
         one.position = position
-    for state in states_of(first.system):
+    for state in states_of(first.system, wanted):
         sheet = worksheet(state, first.system, first.data, first.tree, runs, kinds)
         solution = solve(state, sheet, first.data.data, table, len(group), first.tree, runs, sought)
         for one in group:

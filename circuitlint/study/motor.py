@@ -1,0 +1,64 @@
+"""The motor: constant power while it runs, constant impedance while it starts."""
+
+from __future__ import annotations
+
+from circuitlint import si
+from circuitlint.definition.loads import Motor
+from circuitlint.physics import power_factor, steps
+from circuitlint.sources import Source
+from circuitlint.study.data import DataSheet
+from circuitlint.study.plan import LoadKind, Plan
+from circuitlint.study.worksheet import Key
+
+PLATE_WORDS = ("shaft_power", "efficiency", "current", "power_factor", "starting_ratio", "starting_power_factor")
+AS_SUPPLIED = Source("rated for the supply it is fed from, where the plate says nothing else", known="common practice")
+
+
+class MotorKind(LoadKind[Motor]):
+    """An induction motor by its plate, on one phase."""
+
+    name = "motor"
+    model = Motor
+
+    def data(self, part: Motor, place: str, into: DataSheet) -> None:
+        """The plate."""
+        for word in PLATE_WORDS:
+            into.state(f"{place}.{word}", getattr(part, word))
+        supply = into.data.get("supply.nominal_voltage")
+        stated = part.rated_voltage.nominal if part.rated_voltage else supply.nominal if supply else 0.0
+        into.assume(f"{place}.rated_voltage", si.VOLTAGE, stated, stated, stated,
+                    Source("the motor's plate") if part.rated_voltage else AS_SUPPLIED)
+
+    def impedance(self, plan: Plan, place: str) -> Key:
+        """What the motor looks like at the voltage it settles at; locked rotor at switch-on."""
+        put = plan.sheet.put
+        if plan.direct:
+            return plan.sheet.lack("impedance phasor", place, why="an induction motor on direct current is not described by its plate")
+        demand = self._demand(plan, place)
+        if plan.state.open_gap:
+            absent = [f"{place}.{word}" for word in ("starting_ratio", "starting_power_factor") if not plan.has(f"{place}.{word}")]
+            if absent:
+                return plan.sheet.lack("impedance phasor", place, *absent, why="what the motor takes while it starts is not stated")
+            start = put("starting-demand", place, steps.starting_demand, apparent_power=demand,
+                        ratio=plan.datum(f"{place}.starting_ratio"))
+            return put("impedance phasor", place, steps.impedance_of_demand, figure=False,
+                       voltage=plan.datum(f"{place}.rated_voltage"), apparent_power=start,
+                       power_factor=plan.datum(f"{place}.starting_power_factor"))
+        guess = plan.sheet.guess("settled terminal voltage", place, si.VOLTAGE)
+        return put("impedance phasor", place, steps.impedance_of_demand, figure=False, voltage=guess, apparent_power=demand,
+                   power_factor=plan.datum(f"{place}.power_factor"))
+
+    def _demand(self, plan: Plan, place: str) -> Key:
+        put = plan.sheet.put
+        if plan.has(f"{place}.shaft_power"):
+            taken = put("electrical-input", place, steps.electrical_input, shaft_power=plan.datum(f"{place}.shaft_power"),
+                        efficiency=plan.datum(f"{place}.efficiency"))
+            return put("rated-demand", place, steps.apparent_of_active, active_power=taken,
+                       power_factor=plan.datum(f"{place}.power_factor"))
+        return put("rated-demand", place, power_factor.apparent_power, voltage=plan.datum(f"{place}.rated_voltage"),
+                   current=plan.datum(f"{place}.current"))
+
+    def figures(self, plan: Plan, place: str) -> None:
+        """Nothing beyond voltage, current and power; running, its voltage settles the guess."""
+        if not plan.direct and not plan.state.open_gap:
+            plan.sheet.settle(Key("settled terminal voltage", place), Key("voltage", place), plan.datum("supply.voltage"))
