@@ -36,7 +36,7 @@ def main(argv: Sequence[str] | None = None) -> int:
         print(f"circuitlint: {error}", file=sys.stderr)
         return FAILED
     except BrokenPipeError:
-        sys.stdout = open(os.devnull, "w", encoding="utf-8")
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         return NOTHING_HELD
     except KeyboardInterrupt:
         print("circuitlint: stopped", file=sys.stderr)

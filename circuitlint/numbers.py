@@ -1,7 +1,8 @@
 """The grammar of numbers with tolerances: text in, plain floats and unit texts out. It knows no units.
 
 A number has an optional sign, digits, an optional decimal point with digits, an optional exponent. There is no arithmetic, no
-digit grouping and no decimal comma. IEC 60062 writes a letter in place of the point: `4k7`, `2R2`, `100n`, from milliohm up for resistances, from pico to milli for the others.
+digit grouping and no decimal comma. IEC 60062 writes a letter in place of the point: `4k7`, `2R2`,
+`100n`, from milliohm up for resistances, from pico to milli for the others.
 """
 
 from __future__ import annotations

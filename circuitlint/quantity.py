@@ -10,7 +10,7 @@ from typing import Any
 from circuitlint import numbers, units
 from circuitlint.errors import QuantityError
 from circuitlint.numbers import NotANumber, Stated
-from circuitlint.si import AREA, RATIO, TEMPERATURE, Dimension
+from circuitlint.si import AREA, DIMENSIONS, RATIO, TEMPERATURE, Dimension
 
 KELVIN_AT_ZERO_CELSIUS = 273.15
 _PREFIXES = ((1e9, "G"), (1e6, "M"), (1e3, "k"), (1.0, ""), (1e-3, "m"), (1e-6, "µ"), (1e-9, "n"), (1e-12, "p"))
@@ -120,7 +120,7 @@ def _resolved(unit: str, dimension: Dimension, shown: str) -> tuple[str, float]:
 
 
 def _dimension_name(found: str, unit: str, dimension: Dimension, shown: str) -> str:
-    name = next((one.name for one in units.DIMENSIONS.values() if one.unit == found), "")
+    name = next((one.name for one in DIMENSIONS.values() if one.unit == found), "")
     if not name:
         raise QuantityError(f"{shown} has the unit {unit[:24]!r}, which is none of the trade's here", _accepted(dimension))
     return _a(name)

@@ -95,14 +95,12 @@ def _is_var(name: str) -> bool:
 
 def _product(text: str, whole: str) -> Any:
     quantity: Any = None
-    position = 0
-    for factor in text.split("*"):
+    for position, factor in enumerate(text.split("*")):
         found = _FACTOR.fullmatch(factor)
         if found is None or position > 3:
             raise UnknownUnit(whole, nearest(whole))
         one = _one(found[1], whole) ** int(found[2] or 1)
         quantity = one if quantity is None else quantity * one
-        position += 1
     return quantity
 
 

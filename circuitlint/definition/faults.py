@@ -58,7 +58,7 @@ def _told(value: Any) -> str:
         return repr(value if len(value) <= 60 else value[:57] + "...")
     if value is None:
         return "nothing"
-    return {dict: "a mapping", list: "a list"}.get(type(value), repr(value)[:60])
+    return "a mapping" if isinstance(value, dict) else "a list" if isinstance(value, list) else repr(value)[:60]
 
 
 def _walk(model: Any, path: Sequence[Step]) -> Any:

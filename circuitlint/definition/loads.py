@@ -32,7 +32,7 @@ class Coil(Entry):
         default=None, description="The kind of current on the coil's plate."
     )
     resistance: f.Resistance | None = Field(default=None, description="Direct-current resistance of the winding.")
-    resistance_at: f.Temperature | None = Field(default=None, description="Temperature of that resistance; 20 degC if not said.")
+    resistance_at: f.Temperature | None = Field(default=None, description="Temperature of that resistance, else 20 degC.")
     inductance: f.Inductance | None = None
     reactance: f.Reactance | None = Field(default=None, description="Reactance at the rated frequency.")
     impedance: f.Resistance | None = Field(default=None, description="Impedance at the rated frequency.")
@@ -65,7 +65,7 @@ class Coil(Entry):
             )
         if self.power_factor is not None and self.power_factor.high > 1.0:
             raise PydanticCustomError(
-                "nameplate", "{what}", {"what": "a power factor above 1", "accepted": "a power factor up to 1, tolerance included"}
+                "nameplate", "{what}", {"what": "a power factor above 1", "accepted": "up to 1, with its tolerance"}
             )
         return self
 

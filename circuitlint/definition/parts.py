@@ -44,14 +44,14 @@ class Substitution:
             items = [self.apply(item, file, inside, depth + 1) for item in node.value]
             if all(new is old for new, old in zip(items, node.value, strict=True)):
                 return node
-            return yaml.SequenceNode(node.tag, items, node.start_mark, node.end_mark, node.flow_style)
+            return yaml.SequenceNode(node.tag, items, node.start_mark, node.end_mark)
         reference = child(node, "part")
         if isinstance(reference, yaml.ScalarNode):
             return self._replace(node, reference, file, inside, depth)
         pairs = [(key, self.apply(value, file, inside, depth + 1)) for key, value in node.value]
         if all(new[1] is old[1] for new, old in zip(pairs, node.value, strict=True)):
             return node
-        return yaml.MappingNode(node.tag, pairs, node.start_mark, node.end_mark, node.flow_style)
+        return yaml.MappingNode(node.tag, pairs, node.start_mark, node.end_mark)
 
     def _replace(
         self, node: yaml.Node, reference: yaml.Node, file: str, inside: tuple[str, ...], depth: int
@@ -67,16 +67,16 @@ class Substitution:
             else:
                 circle = " -> ".join((*inside, name))
                 self.faults.append(fault_at(reference, file, f"parts refer to each other in a circle: {circle}"))
-            return yaml.MappingNode(node.tag, own, node.start_mark, node.end_mark, node.flow_style)
+            return yaml.MappingNode(node.tag, own, node.start_mark, node.end_mark)
         self.used.add(name)
         base = self.apply(found, file, (*inside, name), depth + 1)
         if not isinstance(base, yaml.MappingNode):
             self.faults.append(fault_at(found, file, f"the part {name!r} is not a mapping", "`key: value` lines"))
-            return yaml.MappingNode(node.tag, own, node.start_mark, node.end_mark, node.flow_style)
+            return yaml.MappingNode(node.tag, own, node.start_mark, node.end_mark)
         over = {key.value for key, _ in own}
         pairs = [(key, value) for key, value in base.value if key.value not in over]
         pairs += [(key, self._over(base, key.value, self.apply(value, file, inside, depth + 1))) for key, value in own]
-        return yaml.MappingNode(node.tag, pairs, node.start_mark, node.end_mark, node.flow_style)
+        return yaml.MappingNode(node.tag, pairs, node.start_mark, node.end_mark)
 
     def _over(self, base: yaml.Node, key: str, value: yaml.Node | None) -> yaml.Node | None:
         """A mapping beside `part:` goes over the part's mapping of the same key, key by key."""
@@ -86,7 +86,7 @@ class Substitution:
         over = {inner.value for inner, _ in value.value}
         pairs = [(inner, kept) for inner, kept in under.value if inner.value not in over]
         pairs += [(inner, self._over(under, inner.value, new)) for inner, new in value.value]
-        return yaml.MappingNode(value.tag, pairs, value.start_mark, value.end_mark, value.flow_style)
+        return yaml.MappingNode(value.tag, pairs, value.start_mark, value.end_mark)
 
 
 def part_key(text: Text, name: str) -> yaml.Node | None:

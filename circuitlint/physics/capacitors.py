@@ -138,9 +138,7 @@ def resonance_order(*, short_circuit_power: VoltAmpere, reactive_power: Var) -> 
     voltage="Un",
     residual_voltage="Ur",
 )
-def discharge_resistance(
-    *, time: Second, connection: Ratio, capacitance: Farad, voltage: Volt, residual_voltage: Volt
-) -> Ohm:
+def discharge_resistance(*, time: Second, connection: Ratio, capacitance: Farad, voltage: Volt, residual_voltage: Volt) -> Ohm:
     """R = t / (k · C · ln(√2 · Un / Ur))"""
     return time / (connection * capacitance * np.log(math.sqrt(2.0) * voltage / residual_voltage))
 
@@ -156,9 +154,7 @@ def discharge_resistance(
     voltage="Un",
     residual_voltage="Ur",
 )
-def discharge_time(
-    *, connection: Ratio, resistance: Ohm, capacitance: Farad, voltage: Volt, residual_voltage: Volt
-) -> Second:
+def discharge_time(*, connection: Ratio, resistance: Ohm, capacitance: Farad, voltage: Volt, residual_voltage: Volt) -> Second:
     """t = k · R · C · ln(√2 · Un / Ur)"""
     return connection * resistance * capacitance * np.log(math.sqrt(2.0) * voltage / residual_voltage)
 

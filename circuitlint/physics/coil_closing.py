@@ -106,9 +106,7 @@ def hold_in_capacitance(*, drop_out_share: Ratio, hold_power: VoltAmpere, freque
     resistance="R",
     frequency="f",
 )
-def hold_in_capacitance_with_resistance(
-    *, drop_out_share: Ratio, impedance: Ohm, resistance: Ohm, frequency: Hertz
-) -> Farad:
+def hold_in_capacitance_with_resistance(*, drop_out_share: Ratio, impedance: Ohm, resistance: Ohm, frequency: Hertz) -> Farad:
     """C = 1 / (2π · f · (√(Z² − R²) + √(Z² / m² − R²)))"""
     reactance = np.sqrt(impedance**2 - resistance**2)
     needed = reactance + np.sqrt((impedance / drop_out_share) ** 2 - resistance**2)
@@ -128,9 +126,7 @@ def hold_in_length(*, capacitance: Farad, capacitance_per_length: FaradPerMetre)
     return capacitance / capacitance_per_length
 
 
-@formula(
-    "m", "{Ud} / {U}", source=HOLD_IN, validity="at the highest supply voltage", drop_out_voltage="Ud", voltage="U"
-)
+@formula("m", "{Ud} / {U}", source=HOLD_IN, validity="at the highest supply voltage", drop_out_voltage="Ud", voltage="U")
 def drop_out_share(*, drop_out_voltage: Volt, voltage: Volt) -> Ratio:
     """m = Ud / U"""
     return drop_out_voltage / voltage

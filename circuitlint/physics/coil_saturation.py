@@ -29,9 +29,7 @@ BEND = "no hysteresis; the curve fitted to the core"
     saturation_current="Is",
     exponent="n",
 )
-def chord_inductance(
-    *, unsaturated_inductance: Henry, current: Ampere, saturation_current: Ampere, exponent: Ratio
-) -> Henry:
+def chord_inductance(*, unsaturated_inductance: Henry, current: Ampere, saturation_current: Ampere, exponent: Ratio) -> Henry:
     """L = L0 / (1 + (I / Is)^n)"""
     return unsaturated_inductance / (1.0 + (current / saturation_current) ** exponent)
 
@@ -46,9 +44,7 @@ def chord_inductance(
     saturated_inductance="Le",
     saturation_flux="ψs",
 )
-def flux_linkage(
-    *, current: Ampere, unsaturated_inductance: Henry, saturated_inductance: Henry, saturation_flux: Weber
-) -> Weber:
+def flux_linkage(*, current: Ampere, unsaturated_inductance: Henry, saturated_inductance: Henry, saturation_flux: Weber) -> Weber:
     """ψ = Le · I + ψs · tanh(I · (L0 − Le) / ψs)"""
     bend = current * (unsaturated_inductance - saturated_inductance) / saturation_flux
     return saturated_inductance * current + saturation_flux * np.tanh(bend)

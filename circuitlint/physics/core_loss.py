@@ -35,9 +35,7 @@ def core_voltage(*, voltage: ComplexVolt, current: ComplexAmpere, resistance: Oh
     return np.abs(voltage - current * resistance)
 
 
-@formula(
-    "Rp", "{Uc}² / {Pc}", source=SEPARATION, validity="one voltage and frequency", core_voltage="Uc", core_power="Pc"
-)
+@formula("Rp", "{Uc}² / {Pc}", source=SEPARATION, validity="one voltage and frequency", core_voltage="Uc", core_power="Pc")
 def core_resistance(*, core_voltage: Volt, core_power: Watt) -> Ohm:
     """Rp = Uc² / Pc"""
     return core_voltage**2 / core_power
@@ -66,9 +64,7 @@ def parallel_resistance_of(*, series_resistance: Ohm, quality: Ratio) -> Ohm:
     return series_resistance * (1.0 + quality**2)
 
 
-@formula(
-    "Xs", "{Xp} · {Q}² / (1 + {Q}²)", source=CONVERSION, validity="one frequency", parallel_reactance="Xp", quality="Q"
-)
+@formula("Xs", "{Xp} · {Q}² / (1 + {Q}²)", source=CONVERSION, validity="one frequency", parallel_reactance="Xp", quality="Q")
 def series_reactance_of(*, parallel_reactance: Ohm, quality: Ratio) -> Ohm:
     """Xs = Xp · Q² / (1 + Q²)"""
     return parallel_reactance * quality**2 / (1.0 + quality**2)

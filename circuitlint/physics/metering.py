@@ -74,9 +74,7 @@ def burden_voltage(*, full_scale_burden: Volt, current: Ampere, meter_range: Amp
     return full_scale_burden * current / meter_range
 
 
-@formula(
-    "Rb", "{Uf} / {Ir}", source=BURDEN, validity="shunt of steady resistance", full_scale_burden="Uf", meter_range="Ir"
-)
+@formula("Rb", "{Uf} / {Ir}", source=BURDEN, validity="shunt of steady resistance", full_scale_burden="Uf", meter_range="Ir")
 def burden_resistance(*, full_scale_burden: Volt, meter_range: Ampere) -> Ohm:
     """Rb = Uf / Ir"""
     return full_scale_burden / meter_range

@@ -31,9 +31,7 @@ def capacitor_peak(*, initial_voltage: Volt, current: Ampere, inductance: Henry,
     return np.sqrt(initial_voltage**2 + current**2 * inductance / capacitance)
 
 
-@formula(
-    "U", "{I0} · {Rs}", source=FIRST_STEP, validity="at the instant of opening", current="I0", series_resistance="Rs"
-)
+@formula("U", "{I0} · {Rs}", source=FIRST_STEP, validity="at the instant of opening", current="I0", series_resistance="Rs")
 def opening_step(*, current: Ampere, series_resistance: Ohm) -> Volt:
     """U = I0 · Rs"""
     return current * series_resistance

@@ -2,9 +2,7 @@
 
 from __future__ import annotations
 
-from typing import cast
-
-from typing import Any
+from typing import Any, cast
 
 import numpy as np
 
@@ -200,20 +198,23 @@ def core_resistance_of_plate(*, impedance: Ohm, power_factor: Ratio, resistance:
 )
 def core_reactance_of_plate(*, impedance: Ohm, power_factor: Ratio, resistance: Ohm) -> Ohm:
     """X = −1 / Im (1 / (Z · cosφ − R + j Z · sinφ))"""
-    return -1.0 / np.imag(_core(impedance, power_factor, resistance))
+    reactance: Ohm = -1.0 / np.imag(_core(impedance, power_factor, resistance))
+    return reactance
 
 
 @formula(
-    "Z", "{R} + 1 / (1 / {Rc} + 1 / (j {X}))", source=Source("T. R. Kuphaldt, Lessons in Electric Circuits vol. II (AC)", "ch. 5"),
+    "Z", "{R} + 1 / (1 / {Rc} + 1 / (j {X}))",
+    source=Source("T. R. Kuphaldt, Lessons in Electric Circuits vol. II (AC)", "ch. 5"),
     validity="core loss as a resistance across the inductance", resistance="R", core_resistance="Rc", reactance="X",
 )
 def impedance_with_core(*, resistance: Ohm, core_resistance: Ohm, reactance: Ohm) -> ComplexOhm:
     """Z = R + 1 / (1 / Rc + 1 / (j X))"""
-    return resistance + 1.0 / (1.0 / core_resistance - 1j / reactance)
+    impedance: ComplexOhm = resistance + 1.0 / (1.0 / core_resistance - 1j / np.asarray(reactance))
+    return impedance
 
 
-@formula("Pc", "{P} − {I}² · {R}", source=Source("what the winding does not lose, the core does", known="derived"), active_power="P",
-         current="I", resistance="R")
+@formula("Pc", "{P} − {I}² · {R}", source=Source("what the winding does not lose, the core does", known="derived"),
+         active_power="P", current="I", resistance="R")
 def core_loss(*, active_power: Watt, current: Ampere, resistance: Ohm) -> Watt:
     """Pc = P − I² · R"""
     return active_power - current**2 * resistance
@@ -222,7 +223,7 @@ def core_loss(*, active_power: Watt, current: Ampere, resistance: Ohm) -> Watt:
 @formula("Z", "{Z} / {n}", source=Source("equal parts in parallel", known="derived"), impedance="Z", count="n")
 def impedance_of_several(*, impedance: ComplexOhm, count: Ratio) -> ComplexOhm:
     """Z = Z / n"""
-    return impedance / count
+    return impedance * (1.0 / count)
 
 
 @formula("P", "{P} / {η}", source=Source("electrical input = shaft power over efficiency", known="common practice"),
@@ -246,7 +247,9 @@ def apparent_of_active(*, active_power: Watt, power_factor: Ratio) -> VoltAmpere
 )
 def impedance_of_demand(*, voltage: Volt, apparent_power: VoltAmpere, power_factor: Ratio) -> ComplexOhm:
     """Z = U² / S · (cosφ + j sinφ)"""
-    return voltage**2 / apparent_power * (power_factor + 1j * np.sqrt(1.0 - power_factor**2))
+    turn: Any = power_factor + 1j * np.sqrt(1.0 - power_factor**2)
+    impedance: ComplexOhm = voltage**2 / apparent_power * turn
+    return impedance
 
 
 @formula("I", "{S} / {U}", source=Source("definition of apparent power", known="derived"), apparent_power="S", voltage="U")

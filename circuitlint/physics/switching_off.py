@@ -70,9 +70,7 @@ def peak_with_resistor(*, supply: Volt, current: Ampere, parallel_resistance: Oh
     return supply + current * parallel_resistance
 
 
-@formula(
-    "T", "{L} / ({R} + {Rp})", source=LOOP, validity=LINEAR, inductance="L", resistance="R", parallel_resistance="Rp"
-)
+@formula("T", "{L} / ({R} + {Rp})", source=LOOP, validity=LINEAR, inductance="L", resistance="R", parallel_resistance="Rp")
 def time_constant_with_resistor(*, inductance: Henry, resistance: Ohm, parallel_resistance: Ohm) -> Second:
     """T = L / (R + Rp)"""
     return inductance / (resistance + parallel_resistance)
@@ -95,16 +93,16 @@ def _shape(x: Real) -> Real:
     inductance="L",
     resistance="R",
 )
-def release_time(
-    *, current: Ampere, drop_out_current: Ampere, clamp_voltage: Volt, inductance: Henry, resistance: Ohm
-) -> Second:
+def release_time(*, current: Ampere, drop_out_current: Ampere, clamp_voltage: Volt, inductance: Henry, resistance: Ohm) -> Second:
     """t = L / R · ln((I0 + Uc / R) / (Id + Uc / R))
 
-    Infinite where nothing brings the current down: no clamp voltage and no resistance, or no drop-out current above zero.
+    Infinite where nothing brings the current down: no clamp voltage, and no resistance or no drop-out current.
     """
     fall = current - drop_out_current
     against = clamp_voltage + resistance * drop_out_current
-    return inductance * fall / against * _shape(resistance * fall / against)
+    driven = against > 0.0
+    slowness = fall / np.where(driven, against, 1.0)
+    return np.where(driven, inductance * slowness * _shape(resistance * slowness), np.inf)
 
 
 @formula(

@@ -15,7 +15,8 @@ EXACT_PEAK = Source("largest value of that current over all closing angles, at v
                     note="checked by brute force over all angles; the fitted factor of IEC 60909-0 lies within 2 % of it")
 
 
-@formula("T", "{L} / {R}", source=BUILD_UP, validity="one resistance and one inductance in series", inductance="L", resistance="R")
+@formula("T", "{L} / {R}", source=BUILD_UP, validity="one resistance and one inductance in series", inductance="L",
+         resistance="R")
 def time_constant(*, inductance: Henry, resistance: Ohm) -> Second:
     """T = L / R"""
     return inductance / resistance
@@ -61,7 +62,11 @@ def switch_on_current(
     impedance = resistance + 1j * omega * inductance
     shift = closing_angle - np.angle(impedance)
     fading = np.exp(-resistance * time / inductance) * np.sin(shift)
-    return np.sqrt(2.0) * voltage_rms / np.abs(impedance) * (np.sin(omega * time + shift) - fading)
+    crest: Ampere = np.sqrt(2.0) * voltage_rms / np.abs(impedance) * (np.sin(omega * time + shift) - fading)
+    return crest
+
+
+SQRT_2 = float(np.sqrt(2.0))
 
 
 def _factor(resistance: Real, reactance: Real) -> Real:
@@ -103,4 +108,4 @@ def switch_on_factor(*, resistance: Ohm, reactance: Ohm) -> Ratio:
 )
 def switch_on_peak(*, current_rms: Ampere, resistance: Ohm, reactance: Ohm) -> Ampere:
     """ip = √2 · κ · I"""
-    return np.sqrt(2.0) * _factor(resistance, reactance) * current_rms
+    return SQRT_2 * _factor(resistance, reactance) * current_rms

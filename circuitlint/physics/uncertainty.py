@@ -81,9 +81,7 @@ def propagate(model: Callable[[RealArray], ArrayLike], inputs: Estimates) -> Est
         above, below = at.copy(), at.copy()
         above[index] += step
         below[index] -= step
-        rise = np.atleast_1d(np.asarray(model(above), dtype=float)) - np.atleast_1d(
-            np.asarray(model(below), dtype=float)
-        )
+        rise = np.atleast_1d(np.asarray(model(above), dtype=float)) - np.atleast_1d(np.asarray(model(below), dtype=float))
         columns.append(rise / (above[index] - below[index]))
     sensitivities = np.column_stack(columns)
     return _estimates(results, sensitivities @ inputs.covariance @ sensitivities.T)

@@ -24,25 +24,19 @@ CAPACITANCE = Source("technical page on cable capacitance", "screened core")
 SKIN = Source("IEC 60287-1-1", "skin effect", known="value from memory", note="argument of the formula read")
 
 
-@formula(
-    "d", "0.127e-3 · 92^((36 − {n}) / 39)", source=GAUGE, validity="m; sizes 1/0 to 4/0 are n = 0 to −3", gauge="n"
-)
+@formula("d", "0.127e-3 · 92^((36 − {n}) / 39)", source=GAUGE, validity="m; sizes 1/0 to 4/0 are n = 0 to −3", gauge="n")
 def gauge_diameter(*, gauge: Ratio) -> Metre:
     """d = 0.127e-3 · 92^((36 − n) / 39)"""
     return 0.127e-3 * 92.0 ** ((36.0 - gauge) / 39.0)
 
 
-@formula(
-    "A", "π / 4 · {d}²", source=Source("area of a circle", known="derived"), validity="solid round wire", diameter="d"
-)
+@formula("A", "π / 4 · {d}²", source=Source("area of a circle", known="derived"), validity="solid round wire", diameter="d")
 def wire_area(*, diameter: Metre) -> SquareMetre:
     """A = π / 4 · d²"""
     return np.pi / 4.0 * diameter**2
 
 
-@formula(
-    "A", "π / 4 · 25.4e-6² · 1000 · {n}", source=MIL, validity="m²; n in thousands of circular mils", thousands="n"
-)
+@formula("A", "π / 4 · 25.4e-6² · 1000 · {n}", source=MIL, validity="m²; n in thousands of circular mils", thousands="n")
 def area_of_circular_mils(*, thousands: Ratio) -> SquareMetre:
     """A = π / 4 · 25.4e-6² · 1000 · n"""
     return np.pi / 4.0 * 25.4e-6**2 * 1000.0 * thousands
@@ -105,14 +99,13 @@ def skin_argument(*, frequency: Hertz, shape: Ratio, resistance_per_length: OhmP
 
 @formula(
     "R~/R",
-    "1 + {x}⁴ / (192 + 0.8 · {x}⁴) to x = 2.8, 1 − 0.136 − 0.0177 · {x} + 0.0563 · {x}² to x = 3.8, "
-    "0.267 + 0.354 · {x} beyond",
+    "1 + {x}⁴ / (192 + 0.8 · {x}⁴) to 2.8, 0.864 − 0.0177 · {x} + 0.0563 · {x}² to 3.8, 0.267 + 0.354 · {x} beyond",
     source=SKIN,
     validity="within 0.5 % of the exact solution for a solid round wire",
     argument="x",
 )
 def skin_effect(*, argument: Ratio) -> Ratio:
-    """R~/R = 1 + x⁴ / (192 + 0.8 · x⁴) to x = 2.8, 1 − 0.136 − 0.0177 · x + 0.0563 · x² to x = 3.8, 0.267 + 0.354 · x beyond"""
+    """R~/R = 1 + x⁴ / (192 + 0.8 · x⁴) to 2.8, 0.864 − 0.0177 · x + 0.0563 · x² to 3.8, 0.267 + 0.354 · x beyond"""
     low = argument**4 / (192.0 + 0.8 * argument**4)
     middle = -0.136 - 0.0177 * argument + 0.0563 * argument**2
     high = 0.354 * argument - 0.733

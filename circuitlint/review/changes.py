@@ -70,9 +70,7 @@ class FindingChange(Subject):
     newly_holds: bool = Field(description="Whether it holds its circuit now and did not before.")
     what: str = Field(description="What is, in one sentence.")
     help: str = Field(description="What would help.")
-    place: Place = Field(
-        description="Where in the definition the part stands; for a finding that is gone, where it stood."
-    )
+    place: Place = Field(description="Where in the definition the part stands; for a finding that is gone, where it stood.")
 
 
 class MarginMove(Subject):
@@ -146,9 +144,7 @@ class Comparison(Part):
 
     before: Side = Field(description="The earlier review.")
     after: Side = Field(description="The later review.")
-    new_held: bool = Field(
-        description="Whether a finding holds a circuit, or a lost rule the review, that did not before."
-    )
+    new_held: bool = Field(description="Whether a finding holds a circuit, or a lost rule the review, that did not before.")
     newly_held: tuple[str, ...] = Field(description="Tags of circuits held now and not before.")
     no_longer_held: tuple[str, ...] = Field(description="Tags of circuits held before and not now.")
     problems: tuple[Problem, ...] = Field(description="Failures of rules and plugins that were not there before.")
@@ -168,6 +164,4 @@ class Comparison(Part):
     @property
     def empty(self) -> bool:
         """Whether nothing differs."""
-        return not any(
-            getattr(self, name) for name in type(self).model_fields if name not in ("before", "after", "new_held")
-        )
+        return not any(getattr(self, name) for name in type(self).model_fields if name not in ("before", "after", "new_held"))

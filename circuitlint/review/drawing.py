@@ -119,7 +119,7 @@ def regions(circuit: CircuitStudy) -> Iterable[Region]:
         for across, up in pairs:
             if Key(across, "") in solution.row and Key(up, "") in solution.row:
                 points = np.stack([circuit.spread(state, Key(across, "")), circuit.spread(state, Key(up, ""))], axis=1)
-                yield Region(of="", state=state, across=across, up=up, points=tuple(map(tuple, hull(points))))
+                yield Region(of="", state=state, across=across, up=up, points=tuple((x, y) for x, y in hull(points)))
 
 
 def hull(points: RealArray) -> list[list[float]]:

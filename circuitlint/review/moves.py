@@ -137,9 +137,7 @@ def data(old: Circuit, new: Circuit) -> Iterator[c.DatumChange]:
         assert told is not None
         before, after = _stated(was), _stated(now)
         if before != after:
-            yield c.DatumChange(
-                tag=new.tag, of=of, kind=told.kind, before=_without(before, after), after=_without(after, before)
-            )
+            yield c.DatumChange(tag=new.tag, of=of, kind=told.kind, before=_without(before, after), after=_without(after, before))
 
 
 def _without(some: tuple[str, ...], others: tuple[str, ...]) -> tuple[str, ...]:
@@ -186,9 +184,7 @@ def terms(before: Record, after: Record) -> Iterator[c.TermChange]:
     yield from _term("hold at", before.hold_at, after.hold_at)
     yield from _term("room that counts as close to a limit", f"{one.near_the_limit:.3g}", f"{other.near_the_limit:.3g}")
     taken = "in the ruleset"
-    yield from _terms_of(
-        "rule", {rule.name: taken for rule in before.rules}, {rule.name: taken for rule in after.rules}
-    )
+    yield from _terms_of("rule", {rule.name: taken for rule in before.rules}, {rule.name: taken for rule in after.rules})
     for rule in dict.fromkeys((*one.severities, *other.severities)):
         was, now = one.severities.get(rule, {}), other.severities.get(rule, {})
         if was and now:

@@ -81,5 +81,6 @@ class ImpedanceKind(LoadKind[Impedance]):
                               reactance=reactance)
 
 
-CORE: Kinds = MappingProxyType({kind.name: kind for kind in (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind(), MotorKind())})
+_MADE = (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind(), MotorKind())
+CORE: Kinds = MappingProxyType({kind.name: kind for kind in _MADE})
 """The load kinds every definition knows."""

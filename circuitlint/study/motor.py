@@ -33,12 +33,13 @@ class MotorKind(LoadKind[Motor]):
         """What the motor looks like at the voltage it settles at; locked rotor at switch-on."""
         put = plan.sheet.put
         if plan.direct:
-            return plan.sheet.lack("impedance phasor", place, why="an induction motor on direct current is not described by its plate")
+            return plan.sheet.lack("impedance phasor", place, why="a motor's plate says nothing of direct current")
         demand = self._demand(plan, place)
         if plan.state.open_gap:
-            absent = [f"{place}.{word}" for word in ("starting_ratio", "starting_power_factor") if not plan.has(f"{place}.{word}")]
+            wanted = (f"{place}.starting_ratio", f"{place}.starting_power_factor")
+            absent = [path for path in wanted if not plan.has(path)]
             if absent:
-                return plan.sheet.lack("impedance phasor", place, *absent, why="what the motor takes while it starts is not stated")
+                return plan.sheet.lack("impedance phasor", place, *absent, why="what it takes while it starts is not stated")
             start = put("starting-demand", place, steps.starting_demand, apparent_power=demand,
                         ratio=plan.datum(f"{place}.starting_ratio"))
             return put("impedance phasor", place, steps.impedance_of_demand, figure=False,

@@ -216,7 +216,8 @@ def _cable(plan: Plan, place: str) -> Key:
     if plan.direct:
         return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
     at_frequency = put("reactance-per-metre", place, conductors.reactance_at_frequency,
-                       reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.frequency(), tabled_frequency=plan.datum("cable frequency"))
+                       reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.frequency(),
+                       tabled_frequency=plan.datum("cable frequency"))
     reactance = put("reactance", place, conductors.run_reactance, reactance_per_length=at_frequency,
                     length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
     return put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance, reactance=reactance)

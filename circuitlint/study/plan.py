@@ -14,7 +14,6 @@ from circuitlint.study.data import DataSheet
 from circuitlint.study.states import State
 from circuitlint.study.worksheet import Key, Worksheet
 
-
 M = TypeVar("M", bound=BaseModel)
 
 

@@ -31,16 +31,16 @@ DIRECT_CURRENT = State(
 )
 
 STUCK_OPEN = State(
-    "stuck-open", "mistake: running with the armature held open, windings and conductors at the temperature that brings",
-    hot=True, open_gap=True, mistake=True,
+    "stuck-open", "mistake: running with the armature held open, everything at the temperature that brings", hot=True,
+    open_gap=True, mistake=True,
 )
 OTHER_FREQUENCY = State(
-    "other-frequency", "mistake: 60 Hz where 50 Hz is meant, or 50 Hz where 60 Hz is meant, hot", hot=True, source="other frequency",
-    mistake=True,
+    "other-frequency", "mistake: 60 Hz where 50 Hz is meant, or 50 Hz where 60 Hz is meant, hot", hot=True,
+    source="other frequency", mistake=True,
 )
 ALTERNATING_CURRENT = State(
-    "alternating-current", "mistake: the same voltage as alternating current of 50 Hz, winding cold", source="alternating current",
-    mistake=True,
+    "alternating-current", "mistake: the same voltage as alternating current of 50 Hz, winding cold",
+    source="alternating current", mistake=True,
 )
 
 ON_ALTERNATING = (COLD, STEADY, SWITCH_ON, STUCK_OPEN, DIRECT_CURRENT, OTHER_FREQUENCY)

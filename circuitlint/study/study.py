@@ -18,7 +18,7 @@ from circuitlint.physics.formula import Formula
 from circuitlint.si import Dimension, RealArray
 from circuitlint.study import cases
 from circuitlint.study.balance import BOUND, imbalance
-from circuitlint.study.data import Datum, DataSheet
+from circuitlint.study.data import DataSheet, Datum
 from circuitlint.study.network import collect, tree_of, worksheet
 from circuitlint.study.plan import Kinds, Node, shape_of
 from circuitlint.study.states import State, states_of
@@ -166,7 +166,8 @@ class CircuitStudy:
     def spread(self, state: str, key: Key) -> RealArray:
         """A figure at every opening point of the tolerance box; shape (points,)."""
         solution = self.solutions[state]
-        return np.broadcast_to(np.asarray(solution.values[key]), (solution.circuits, solution.points))[self.position]
+        row: RealArray = np.broadcast_to(np.asarray(solution.values[key]), (solution.circuits, solution.points))[self.position]
+        return row
 
 
 def leads_or_lags(reactive: float) -> str:
