@@ -2,31 +2,14 @@
 
 from __future__ import annotations
 
-from typing import cast
-
 import numpy as np
 
 from circuitlint.physics.formula import formula
-from circuitlint.si import Ampere, ComplexAmpere, ComplexOhm, ComplexVolt, Ohm, Ratio, Volt, Watt
+from circuitlint.si import ComplexAmpere, ComplexVolt, Ohm, Ratio, Volt, Watt
 from circuitlint.sources import Source
 
 SEPARATION = Source("wattmeter reading less winding loss is core loss", known="common practice")
-MODEL = Source("winding resistance in series with inductance and core resistance in parallel", known="derived")
 CONVERSION = Source("equal impedance of series and parallel form", known="derived")
-
-
-@formula(
-    "Pc",
-    "{P} − {I}² · {R}",
-    source=SEPARATION,
-    validity="resistance at the winding's temperature",
-    power="P",
-    current="I",
-    resistance="R",
-)
-def core_power(*, power: Watt, current: Ampere, resistance: Ohm) -> Watt:
-    """Pc = P − I² · R"""
-    return power - current**2 * resistance
 
 
 @formula("Uc", "|{U} − {I} · {R}|", source=SEPARATION, validity="rms phasors", voltage="U", current="I", resistance="R")
@@ -39,23 +22,6 @@ def core_voltage(*, voltage: ComplexVolt, current: ComplexAmpere, resistance: Oh
 def core_resistance(*, core_voltage: Volt, core_power: Watt) -> Ohm:
     """Rp = Uc² / Pc"""
     return core_voltage**2 / core_power
-
-
-@formula(
-    "Z",
-    "{R} + 1 / (1 / {Rp} + 1 / (j · {X}))",
-    source=MODEL,
-    validity="one voltage and frequency",
-    resistance="R",
-    core_resistance="Rp",
-    reactance="X",
-)
-def impedance_with_core(*, resistance: Ohm, core_resistance: Ohm, reactance: Ohm) -> ComplexOhm:
-    """Z = R + 1 / (1 / Rp + 1 / (j · X))
-
-    An infinite core resistance is a coil without core loss.
-    """
-    return cast("ComplexOhm", resistance + 1.0 / (1.0 / core_resistance - 1j / reactance))
 
 
 @formula("Rp", "{Rs} · (1 + {Q}²)", source=CONVERSION, validity="one frequency", series_resistance="Rs", quality="Q")

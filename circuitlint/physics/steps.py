@@ -209,7 +209,8 @@ def core_reactance_of_plate(*, impedance: Ohm, power_factor: Ratio, resistance: 
 )
 def impedance_with_core(*, resistance: Ohm, core_resistance: Ohm, reactance: Ohm) -> ComplexOhm:
     """Z = R + 1 / (1 / Rc + 1 / (j X))"""
-    impedance: ComplexOhm = resistance + 1.0 / (1.0 / core_resistance - 1j / np.asarray(reactance))
+    admittance: Any = 1.0 / core_resistance - 1j / np.asarray(reactance)
+    impedance: ComplexOhm = resistance + 1.0 / admittance
     return impedance
 
 
@@ -223,7 +224,9 @@ def core_loss(*, active_power: Watt, current: Ampere, resistance: Ohm) -> Watt:
 @formula("Z", "{Z} / {n}", source=Source("equal parts in parallel", known="derived"), impedance="Z", count="n")
 def impedance_of_several(*, impedance: ComplexOhm, count: Ratio) -> ComplexOhm:
     """Z = Z / n"""
-    return impedance * (1.0 / count)
+    one: Any = impedance
+    several: ComplexOhm = one / count
+    return several
 
 
 @formula("P", "{P} / {η}", source=Source("electrical input = shaft power over efficiency", known="common practice"),

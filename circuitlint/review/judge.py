@@ -115,7 +115,8 @@ class Judge:
             dimension=figure.dimension.name, nominal=figure.nominal, worst=worst,
             limit=self._limit(limit),
             result=result, basis=basis, severity=severity, margin=margin, nominal_margin=nominal_margin,
-            moved_by=figure.moved_by, what=sentence(figure, worst, limit, least, basis),
+            moved_by=figure.moved_by,
+            what=sentence(figure, worst, limit, least, basis) if basis is not None else plain_sentence(figure, least),
             why=worked_line(circuit, figure) if severity is not None else "",
             help=(outcome.help or self.rule.helps) if severity is not None else "", place=place_of(circuit, at),
         )
@@ -151,6 +152,12 @@ def sentence(figure: Figure, worst: float, limit: Limit, least: bool, basis: rec
     return f"{name}{of}{_in(figure.state)} {value}{note}{spread} {relation} {limit_text}{tail}"
 
 
+def plain_sentence(figure: Figure, least: bool) -> str:
+    """What is, where there is nothing to report; the numbers stand beside it in the record."""
+    of = f" of {figure.of}" if figure.of else ""
+    return f"{figure.name.replace('-', ' ')}{of}{_in(figure.state)} is {'at least' if least else 'at most'} its limit"
+
+
 def _shown(value: float, dimension: Dimension, limit: Limit) -> str:
     if dimension is RATIO and "%" in limit.quantity.text:
         return f"{value * 100:.2f} %"
@@ -174,8 +181,11 @@ def path_of(of: str) -> Path:
 
 def place_of(circuit: CircuitStudy, at: Path) -> record.Place:
     """Where in the definition a part stands."""
-    spot = circuit.definition.spot(at)
-    return record.Place(file=spot.file, line=spot.line, column=spot.column, path=spot.path)
+    made = circuit.places.get(at)
+    if not isinstance(made, record.Place):
+        spot = circuit.definition.spot(at)
+        made = circuit.places[at] = record.Place(file=spot.file, line=spot.line, column=spot.column, path=spot.path)
+    return made
 
 
 def range_text(figure: Figure) -> str:

@@ -6,7 +6,7 @@ or a `Lack` that says what is needed.
 
 from __future__ import annotations
 
-from collections.abc import Collection, Iterable, Mapping
+from collections.abc import Collection, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -14,6 +14,7 @@ import numpy as np
 
 from circuitlint.definition.models import CircuitEntry, Supply
 from circuitlint.definition.reading import CircuitDefinition, Installation
+from circuitlint.definition.text import Path
 from circuitlint.physics.formula import Formula
 from circuitlint.si import Dimension, RealArray
 from circuitlint.study import cases
@@ -80,6 +81,8 @@ class CircuitStudy:
     data: DataSheet
     position: int = 0
     solutions: dict[str, Solution] = field(default_factory=dict)
+    places: dict[Path, object] = field(default_factory=dict)
+    """Places already looked up in the definition."""
 
     @property
     def tag(self) -> str:
@@ -203,10 +206,8 @@ def _study_group(
 ) -> None:
     first = group[0]
     runs = len(first.entry.cable or ())
-    table = {
-        path: np.array([[getattr(one.data.data[path], end) for end in ("low", "nominal", "high")] for one in group])
-        for path in first.data.data
-    }
+    ends = np.array([[(one.low, one.nominal, one.high) for one in study.data.data.values()] for study in group])
+    table = {path: ends[:, number] for number, path in enumerate(first.data.data)}
     for position, one in enumerate(group):
         one.position = position
     for state in states_of(first.system, wanted):
@@ -231,9 +232,11 @@ def solve(
     def run(points: RealArray) -> dict[Key, Any]:
         return sheet.run(_put_in(table, used, inputs, points))
 
-    def figures(values: Mapping[Key, Any], wanted: Iterable[Line], points: int) -> RealArray:
-        kept = [np.broadcast_to(np.asarray(values[line.key], dtype=float), (circuits, points)) for line in wanted]
-        return np.array(kept) if kept else np.zeros((0, circuits, points))
+    def figures(values: Mapping[Key, Any], wanted: Sequence[Line], points: int) -> RealArray:
+        made = np.empty((len(wanted), circuits, points))
+        for number, line in enumerate(wanted):
+            made[number] = values[line.key]
+        return made
 
     opening = cases.opening_points(len(inputs))
     values = run(opening)
@@ -244,9 +247,8 @@ def solve(
         picked = found[[row[line.key] for line in wanted]]
         vertices = np.clip(cases.vertices_by_sensitivity(picked, len(inputs)), -1.0, 1.0)
         points = np.concatenate([np.broadcast_to(opening, (circuits, *opening.shape[1:])), vertices], axis=1)
-        values = run(points)
-        found = figures(values, lines, points.shape[1])
-    faulty = _faulty(sheet, values, found, tree, runs, circuits, points.shape[1])
+        found = np.concatenate([found, figures(run(vertices), lines, vertices.shape[1])], axis=2)
+    faulty = _faulty(sheet, values, found, tree, runs, circuits, opening.shape[1])
     lowest = np.min(found, axis=2) if lines else np.zeros((0, circuits))
     highest = np.max(found, axis=2) if lines else np.zeros((0, circuits))
     studied = points.shape[1]
@@ -260,7 +262,7 @@ def solve(
         lowest[rows], highest[rows], further = cases.refine(evaluate, points, found[rows])
         studied += further
     moved_by = cases.dominant(found, len(inputs), inputs)
-    return Solution(state, sheet, inputs, values, circuits, points.shape[1], lines, row, found[:, :, 0], lowest, highest,
+    return Solution(state, sheet, inputs, values, circuits, opening.shape[1], lines, row, found[:, :, 0], lowest, highest,
                     moved_by, faulty, studied, bool(wanted and inputs))
 
 
