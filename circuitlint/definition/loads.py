@@ -11,7 +11,7 @@ from pydantic_core import PydanticCustomError
 
 from circuitlint.definition import fields as f
 from circuitlint.definition.fields import Entry, OneOrMany
-from circuitlint.definition.models import CircuitEntry, Concession, Material, Supply
+from circuitlint.definition.models import Board, CircuitEntry, Concession, Material, Supply
 
 
 class Gap(Entry):
@@ -176,6 +176,7 @@ class DocumentEntry(Entry):
     title: str = ""
     ruleset: str | None = Field(default=None, description="Name of the ruleset the definition is written for.")
     supplies: dict[str, Supply] = Field(default_factory=dict)
+    boards: dict[str, Board] = Field(default_factory=dict)
     concessions: list[Concession] = Field(default_factory=list)
 
 

@@ -18,14 +18,16 @@ Material: TypeAlias = Literal["copper", "aluminium"]
 Insulation: TypeAlias = Literal["pvc-70", "xlpe-90"]
 Method: TypeAlias = Literal["A1", "A2", "B1", "B2", "C", "D1", "D2"]
 
-SINGLE_SYSTEMS = ("dc", "single-phase")
+Phase: TypeAlias = Literal["L1", "L2", "L3", "L1-L2", "L2-L3", "L3-L1"]
 
 
 class Supply(Entry):
     """Origin of energy. Voltage and frequency hold at the origin, in service."""
 
-    system: Literal["dc", "single-phase"]
-    voltage: f.Voltage = Field(description="Voltage at the origin with its band; rms on alternating current.")
+    system: System
+    voltage: f.Voltage = Field(
+        description="Voltage at the origin with its band; rms on alternating current, between lines on three phases."
+    )
     frequency: f.Frequency | None = Field(default=None, description="Frequency with its band; not on direct current.")
 
     @model_validator(mode="after")
@@ -66,6 +68,15 @@ class Cable(Entry):
         return str(value) if isinstance(value, int) and not isinstance(value, bool) else value
 
 
+class Board(Entry):
+    """A distribution board: fed from a supply or another board, through a feeder that all its circuits share."""
+
+    fed_from: str = Field(min_length=1, description="Name of a supply or of another board.")
+    cable: Annotated[list[Cable] | None, OneOrMany] = Field(
+        default=None, description="The feeder's runs, in order; `[]` where there is none."
+    )
+
+
 class Meter(Entry):
     """The test meter that will carry or embrace the circuit's current at commissioning."""
 
@@ -92,7 +103,14 @@ class CircuitEntry(Entry):
 
     tag: str = Field(min_length=1, max_length=120, description="Reference designation, often after IEC 81346.")
     serves: str = ""
-    fed_from: str = Field(min_length=1, description="Name of a supply.")
+    fed_from: str = Field(min_length=1, description="Name of a supply or a board.")
+    phase: Phase | None = Field(
+        default=None, description="Where a two-wire circuit is connected on a three-phase supply; balanced where not stated."
+    )
+    connection: Literal["star", "delta"] | None = Field(
+        default=None, description="How a balanced three-phase load is connected; star where not stated."
+    )
+    diversity: f.Share | None = Field(default=None, description="Share of the circuit that runs when the board is loaded.")
     ambient: f.Temperature | None = Field(default=None, description="Air temperature at the load.")
     cable: Annotated[list[Cable] | None, OneOrMany] = Field(
         default=None, description="Runs from the origin to the load, in order; `[]` where there is none."

@@ -13,7 +13,7 @@ from pydantic import BaseModel, ValidationError
 
 from circuitlint.definition.faults import faults_of
 from circuitlint.definition.loads import CORE_KINDS, DocumentEntry, document_model
-from circuitlint.definition.models import Cable, CircuitEntry, Concession, Meter, Supply
+from circuitlint.definition.models import Board, Cable, CircuitEntry, Concession, Meter, Supply
 from circuitlint.definition.parts import Substitution, nearest, part_key, parts_of
 from circuitlint.definition.text import Builder, Step, Text, child, fault_at, follow, parse, spell
 from circuitlint.errors import DefinitionError, Fault, InputError
@@ -61,6 +61,7 @@ class Installation:
     title: str = ""
     ruleset: str | None = None
     supplies: dict[str, Supply] = field(default_factory=dict)
+    boards: dict[str, Board] = field(default_factory=dict)
     circuits: list[CircuitDefinition] = field(default_factory=list)
     concessions: list[ConcessionDefinition] = field(default_factory=list)
     documents: list[tuple[str, str]] = field(default_factory=list)
@@ -227,39 +228,86 @@ def _check_references(
     read: Sequence[tuple[Text, yaml.Node | None, dict[str, Any] | None, DocumentEntry | None]],
 ) -> None:
     """Names used against names given, and tags used twice, on the plain data so that they show beside other faults."""
-    supplies: dict[str, str] = {}
+    origins: dict[str, Any] = {}
     for text, root, data, _ in read:
-        given = data.get("supplies") if data else None
-        for name in given if isinstance(given, dict) else ():
-            if name in supplies:
-                text.fault(follow(root, ("supplies", name)), f"the supply {name!r} is named twice", "each name once")
-            supplies[name] = text.file
+        for group, word in (("supplies", "supply"), ("boards", "board")):
+            given = data.get(group) if data else None
+            for name, entry in given.items() if isinstance(given, dict) else ():
+                if name in origins:
+                    text.fault(follow(root, (group, name)), f"the {word} {name!r} has a name that is taken", "each name once")
+                origins[name] = entry if isinstance(entry, dict) else {}
     tags: dict[str, str] = {}
     for text, root, data, _ in read:
+        boards = data.get("boards") if data else None
+        for name, board in boards.items() if isinstance(boards, dict) else ():
+            if isinstance(board, dict):
+                _check_origin(text, root, ("boards", name, "fed_from"), board.get("fed_from"), origins)
+                _check_circle(text, root, name, origins)
         circuits = data.get("circuits") if data else None
         if isinstance(circuits, dict):
             circuits = [circuits]
         for index, circuit in enumerate(circuits if isinstance(circuits, list) else ()):
-            if not isinstance(circuit, dict):
-                continue
-            tag, origin = circuit.get("tag"), circuit.get("fed_from")
-            if isinstance(tag, str):
-                if tag in tags:
-                    where = f"the tag {tag!r} is used twice; first in {tags[tag]}"
-                    text.fault(follow(root, ("circuits", index, "tag")), where, "each tag once over all files")
-                else:
-                    spot = fault_at(follow(root, ("circuits", index, "tag")), text.file, "")
-                    tags[tag] = f"{spot.file}:{spot.line}"
-            if isinstance(origin, str) and origin not in supplies:
-                close = nearest(origin, list(supplies))
-                accepted = f"did you mean {close!r}?" if close else f"one of {', '.join(supplies) or 'no supplies yet'}"
-                text.fault(follow(root, ("circuits", index, "fed_from")), f"no supply is named {origin!r}", accepted)
+            if isinstance(circuit, dict):
+                _check_tag(text, root, index, circuit.get("tag"), tags)
+                origin = circuit.get("fed_from")
+                _check_origin(text, root, ("circuits", index, "fed_from"), origin, origins)
+                _check_phase(text, root, index, circuit, origins)
+
+
+def _check_origin(text: Text, root: yaml.Node | None, path: tuple[Step, ...], origin: Any, origins: Mapping[str, Any]) -> None:
+    if isinstance(origin, str) and origin not in origins:
+        close = nearest(origin, list(origins))
+        accepted = f"did you mean {close!r}?" if close else f"one of {', '.join(origins) or 'no supplies yet'}"
+        text.fault(follow(root, path), f"no supply or board is named {origin!r}", accepted)
+
+
+def _check_circle(text: Text, root: yaml.Node | None, name: str, origins: Mapping[str, Any]) -> None:
+    way = [name]
+    while (origin := origins.get(way[-1], {}).get("fed_from")) is not None and isinstance(origin, str):
+        way.append(origin)
+        if origin in way[:-1]:
+            if origin == name:
+                text.fault(follow(root, ("boards", name, "fed_from")), f"the feeding runs in a circle: {' from '.join(way)}",
+                           "a chain of boards that ends at a supply")
+            return
+
+
+def _system_of(origin: Any, origins: Mapping[str, Any]) -> str:
+    seen: set[str] = set()
+    while isinstance(origin, str) and origin in origins and origin not in seen:
+        seen.add(origin)
+        if "system" in origins[origin]:
+            return str(origins[origin]["system"])
+        origin = origins[origin].get("fed_from")
+    return ""
+
+
+def _check_phase(text: Text, root: yaml.Node | None, index: int, circuit: Mapping[str, Any], origins: Mapping[str, Any]) -> None:
+    system = _system_of(circuit.get("fed_from"), origins)
+    for word in ("phase", "connection"):
+        if circuit.get(word) is not None and system in ("dc", "single-phase"):
+            text.fault(follow(root, ("circuits", index, word)), f"a {system} supply has no {word}", f"no `{word}`")
+    if circuit.get("phase") is not None and circuit.get("connection") is not None:
+        text.fault(follow(root, ("circuits", index, "connection")), "a two-wire circuit is neither star nor delta",
+                   "`phase`, or `connection`")
+
+
+def _check_tag(text: Text, root: yaml.Node | None, index: int, tag: Any, tags: dict[str, str]) -> None:
+    if not isinstance(tag, str):
+        return
+    if tag in tags:
+        where = f"the tag {tag!r} is used twice; first in {tags[tag]}"
+        text.fault(follow(root, ("circuits", index, "tag")), where, "each tag once over all files")
+        return
+    spot = fault_at(follow(root, ("circuits", index, "tag")), text.file, "")
+    tags[tag] = f"{spot.file}:{spot.line}"
 
 
 def _add(installation: Installation, text: Text, root: yaml.Node | None, entry: DocumentEntry) -> None:
     installation.title = installation.title or entry.title
     installation.ruleset = installation.ruleset or entry.ruleset
     installation.supplies.update(entry.supplies)
+    installation.boards.update(entry.boards)
     circuits: list[CircuitEntry] = getattr(entry, "circuits", [])
     nodes = child(root, "circuits")
     for index, circuit in enumerate(circuits):

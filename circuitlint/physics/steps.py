@@ -117,6 +117,12 @@ def impedance_from_apparent_power(*, voltage: Volt, apparent_power: VoltAmpere) 
     return voltage**2 / apparent_power
 
 
+@formula("S", "|{S}|", source=_ALGEBRA, power="S")
+def magnitude_of_power(*, power: ComplexVoltAmpere) -> VoltAmpere:
+    """S = |S|"""
+    return np.abs(power)
+
+
 @formula("P", "Re {S}", source=_ALGEBRA, power="S")
 def active_part(*, power: ComplexVoltAmpere) -> Watt:
     """P = Re S"""

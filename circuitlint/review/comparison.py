@@ -21,12 +21,12 @@ def compare(before: Record, after: Record) -> c.Comparison:
     problems = tuple(one for one in after.problems if one not in before.problems)
     margins = [move for old, new in pairs for move in moves.margins(old, new)]
     figures = [move for old, new in pairs for move in moves.figures(old, new)]
-    was_held = {new.tag: old.held for old, new in pairs}
+    was_held = {id(new): old.held for old, new in pairs}
     return c.Comparison(
         before=_side(before),
         after=_side(after),
         new_held=any(one.newly_holds for one in findings) or _newly_lost(before, after),
-        newly_held=tuple(one.tag for one in after.circuits if one.held and not was_held.get(one.tag, False)),
+        newly_held=tuple(one.tag for one in after.circuits if one.held and not was_held.get(id(one), False)),
         no_longer_held=tuple(new.tag for old, new in pairs if old.held and not new.held),
         problems=problems,
         new=tuple(one for one in findings if one.before is None),

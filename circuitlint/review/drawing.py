@@ -23,6 +23,11 @@ def tree(circuit: CircuitStudy, kinds: Kinds) -> Element:
     entry, supply = circuit.entry, circuit.supply
     stated = [supply.voltage.text, supply.frequency.text if supply.frequency else "dc"]
     parts: list[Element] = [
+        Element(of=place, kind="cable", label=f"feeder {place.partition('[')[2].partition(']')[0]}",
+                values=(f"{run.section.text}, {run.length.text}", run.conductor))
+        for place, run in circuit.feed.runs
+    ]
+    parts += [
         Element(of=f"cable[{index}]", kind="cable", label="cable",
                 values=(f"{run.section.text}, {run.length.text}", run.conductor))
         for index, run in enumerate(entry.cable or ())
@@ -31,7 +36,7 @@ def tree(circuit: CircuitStudy, kinds: Kinds) -> Element:
         values = tuple(text for text in (entry.meter.connection, entry.meter.range.text if entry.meter.range else None) if text)
         parts.append(Element(of="meter", kind="meter", label="meter", values=values))
     parts.append(_load(entry.load, "load", kinds))  # type: ignore[attr-defined]
-    return Element(of="", kind="supply", label=entry.fed_from, values=tuple(stated), parts=tuple(parts))
+    return Element(of="", kind="supply", label=circuit.feed.supply_name, values=tuple(stated), parts=tuple(parts))
 
 
 def _load(load: LoadEntry, place: str, kinds: Kinds) -> Element:

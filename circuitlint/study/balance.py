@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from typing import Any
 
 import numpy as np
@@ -14,34 +14,32 @@ from circuitlint.study.worksheet import Key
 BOUND = 1e-9
 
 
-def imbalance(values: Mapping[Key, Any], tree: Node, runs: int) -> RealArray:
+def imbalance(values: Mapping[Key, Any], tree: Node, places: Sequence[str], phases: int = 1) -> RealArray:
     """The largest relative imbalance of any node, per case; zero where there is nothing to compare.
 
     Compared are: source power against the sum over cables and leaves, source voltage against the sum of voltages along the
-    way, and at each `series` or `parallel` its own voltage or current against the sum over its parts.
+    way (`places` are its cables and feeders), and at each `series` or `parallel` its own voltage or current against the sum over its parts.
     """
     worst: Any = 0.0
-    cables = [f"cable[{index}]" for index in range(runs)]
     leaves = list(_leaves(tree))
     power = [values.get(Key("power phasor", ""))]
     parts = [values.get(Key("power phasor", place)) for place in leaves]
-    parts += [_product(values, place) for place in cables]
+    parts += [_product(values, place, phases) for place in places]
     worst = np.maximum(worst, _apart(power, parts))
-    along = [values.get(Key("voltage phasor", place)) for place in (*cables, tree.place)]
+    along = [values.get(Key("voltage phasor", place)) for place in (*places, tree.place)]
     worst = np.maximum(worst, _apart([values.get(Key("supply phasor", ""))], along))
     for node in _inner(tree):
+        if node.kind == "delta":
+            continue
         word = "current phasor" if node.kind == "parallel" else "voltage phasor"
         below = [values.get(Key(word, one.place)) for one in node.nodes]
         worst = np.maximum(worst, _apart([values.get(Key(word, node.place))], below))
     return np.asarray(worst, dtype=float)
 
 
-def _product(values: Mapping[Key, Any], place: str) -> Any:
-    voltage, current = values.get(Key("voltage phasor", place)), values.get(Key("current", place))
-    line = values.get(Key("current phasor", ""))
-    if voltage is None or current is None or line is None:
-        return None
-    return voltage * np.conj(line)
+def _product(values: Mapping[Key, Any], place: str, phases: int) -> Any:
+    voltage, line = values.get(Key("voltage phasor", place)), values.get(Key("current phasor", ""))
+    return None if voltage is None or line is None else phases * voltage * np.conj(line)
 
 
 def _apart(whole: list[Any], parts: list[Any]) -> Any:
@@ -56,7 +54,7 @@ def _apart(whole: list[Any], parts: list[Any]) -> Any:
 
 def _leaves(node: Node) -> list[str]:
     """Places whose power adds up to the load's; of several equal loads, the place of all of them together."""
-    if node.kind == "several":
+    if node.kind in ("several", "delta"):
         return [node.place]
     return [place for one in node.nodes for place in _leaves(one)] if node.nodes else [node.place]
 

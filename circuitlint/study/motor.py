@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import math
+
 from circuitlint import si
 from circuitlint.definition.loads import Motor
-from circuitlint.physics import power_factor, steps
+from circuitlint.physics import feeding, power_factor, steps
 from circuitlint.sources import Source
 from circuitlint.study.data import DataSheet
 from circuitlint.study.plan import LoadKind, Plan
@@ -15,7 +17,7 @@ AS_SUPPLIED = Source("rated for the supply it is fed from, where the plate says 
 
 
 class MotorKind(LoadKind[Motor]):
-    """An induction motor by its plate, on one phase."""
+    """An induction motor by its plate, on one phase or on three; one phase of a star stands for three."""
 
     name = "motor"
     model = Motor
@@ -25,7 +27,10 @@ class MotorKind(LoadKind[Motor]):
         for word in PLATE_WORDS:
             into.state(f"{place}.{word}", getattr(part, word))
         supply = into.data.get("supply.nominal_voltage")
-        stated = part.rated_voltage.nominal if part.rated_voltage else supply.nominal if supply else 0.0
+        stated = supply.nominal if supply else 0.0
+        if part.rated_voltage:
+            alike = into.tokens.get("feed") == "balanced"
+            stated = part.rated_voltage.nominal / (math.sqrt(3.0) if alike else 1.0)
         into.assume(f"{place}.rated_voltage", si.VOLTAGE, stated, stated, stated,
                     Source("the motor's plate") if part.rated_voltage else AS_SUPPLIED)
 
@@ -54,8 +59,9 @@ class MotorKind(LoadKind[Motor]):
         if plan.has(f"{place}.shaft_power"):
             taken = put("electrical-input", place, steps.electrical_input, shaft_power=plan.datum(f"{place}.shaft_power"),
                         efficiency=plan.datum(f"{place}.efficiency"))
-            return put("rated-demand", place, steps.apparent_of_active, active_power=taken,
-                       power_factor=plan.datum(f"{place}.power_factor"))
+            whole = put("rated-demand", place, steps.apparent_of_active, active_power=taken,
+                        power_factor=plan.datum(f"{place}.power_factor"))
+            return put("rated-demand-of-one-phase", place, feeding.power_of_one_phase, power=whole) if plan.alike else whole
         return put("rated-demand", place, power_factor.apparent_power, voltage=plan.datum(f"{place}.rated_voltage"),
                    current=plan.datum(f"{place}.current"))
 

@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from circuitlint import si
 from circuitlint.definition.loads import LoadEntry
-from circuitlint.definition.models import Cable, CircuitEntry, Supply
+from circuitlint.definition.models import Cable, CircuitEntry
 from circuitlint.errors import OutOfTable
-from circuitlint.physics import conductor_heating, conductors, phasors, power_factor, steps, switching_on
+from circuitlint.physics import conductor_heating, conductors, feeding, phasors, power_factor, steps, switching_on
 from circuitlint.sources import Source
-from circuitlint.study.data import DataSheet
+from circuitlint.study.data import DataSheet, Datum
+from circuitlint.study.feeding import Feed
 from circuitlint.study.plan import Kinds, Node, Plan, impedance_of, share_out, write_power_figures
 from circuitlint.study.states import State
 from circuitlint.study.worksheet import Key, Worksheet
@@ -21,17 +22,27 @@ TYPICAL_REACTANCE = Source(
     "typical reactance of multicore and single-core cables at 50 Hz, 0.07 to 0.15 Ω/km", "handbook tables", known="read"
 )
 OTHER = Source("IEC 60038", "50 Hz and 60 Hz are the mains frequencies", known="value from memory")
+OTHERS = Source("currents of the others on the boards at nominal values", known="derived")
 NEED_HEAT = ("insulation", "method", "ambient", "grouped_circuits")
 
 
-def collect(entry: CircuitEntry, supply: Supply, tree: Node, load: LoadEntry, kinds: Kinds) -> DataSheet:
-    """Every number the study of one circuit starts from."""
-    sheet = DataSheet()
-    sheet.state("supply.voltage", supply.voltage)
+def collect(
+    entry: CircuitEntry, feed: Feed, load: LoadEntry, kinds: Kinds, others: complex | None = None
+) -> DataSheet:
+    """Every number the study of one circuit starts from. `others` is what the others drop, over the nominal loop voltage."""
+    sheet, supply = DataSheet(), feed.supply
+    sheet.token("feed", feed.kind)
+    stated = supply.voltage
+    sheet.data["supply.voltage"] = Datum(
+        "supply.voltage", si.VOLTAGE, stated.nominal * feed.scale, stated.low * feed.scale, stated.high * feed.scale,
+        text=stated.text,
+    )
+    _collect_upstream(sheet, feed, others)
     at = supply.frequency.nominal if supply.frequency else 50.0
     _exact(sheet, "cable frequency", si.FREQUENCY, at, Source("the cables' reactance holds at the supply's frequency"))
-    _exact(sheet, "two conductors", si.RATIO, 2.0, Source("the current flows out and back"))
-    _exact(sheet, "supply.nominal_voltage", si.VOLTAGE, supply.voltage.nominal, Source("nominal voltage of the supply"))
+    back = Source("three phases alike: no current flows back" if feed.balanced else "the current flows out and back")
+    _exact(sheet, "conductors", si.RATIO, 1.0 if feed.balanced else 2.0, back)
+    _exact(sheet, "supply.nominal_voltage", si.VOLTAGE, stated.nominal * feed.scale, Source("nominal voltage of the supply"))
     if supply.frequency is not None:
         sheet.state("supply.frequency", supply.frequency)
         _exact(sheet, "supply.nominal_frequency", si.FREQUENCY, supply.frequency.nominal, Source("nominal frequency"))
@@ -45,7 +56,7 @@ def collect(entry: CircuitEntry, supply: Supply, tree: Node, load: LoadEntry, ki
     if entry.cable is None:
         sheet.lack("cable", "cable, or `cable: []` where there is none", why="the way to the load is not stated")
     for index, run in enumerate(entry.cable or ()):
-        _collect_cable(sheet, f"cable[{index}]", run, supply)
+        _collect_cable(sheet, f"cable[{index}]", run, feed)
     for place, number in counts_of(load, "load"):
         _exact(sheet, f"{place}.count", si.RATIO, float(number), Source("the definition"))
     for place, kind, part in leaves_of(load, "load"):
@@ -57,7 +68,22 @@ def _exact(sheet: DataSheet, path: str, dimension: si.Dimension, value: float, s
     sheet.assume(path, dimension, value, value, value, source)
 
 
-def _collect_cable(sheet: DataSheet, place: str, run: Cable, supply: Supply) -> None:
+def _collect_upstream(sheet: DataSheet, feed: Feed, others: complex | None) -> None:
+    """Feeders on the way, and what the others on the boards drop along them; they may run or not."""
+    for path in feed.missing:
+        sheet.lack("feeders", path, why="the way from the origin to the board is not stated")
+    for place, run in feed.runs:
+        _collect_cable(sheet, place, run, feed)
+    if others is None or not feed.boards:
+        return
+    sheet.token("others", "known")
+    _exact(sheet, "others' drop in phase", si.RATIO, others.real, OTHERS)
+    _exact(sheet, "others' drop across", si.RATIO, others.imag, OTHERS)
+    sheet.assume("others running", si.RATIO, 1.0, 0.0, 1.0, OTHERS)
+
+
+def _collect_cable(sheet: DataSheet, place: str, run: Cable, feed: Feed) -> None:
+    supply = feed.supply
     sheet.state(f"{place}.length", run.length)
     section = run.section.nominal
     zero, source = materials.inferred_zero(run.conductor)
@@ -82,12 +108,14 @@ def _collect_cable(sheet: DataSheet, place: str, run: Cable, supply: Supply) -> 
         scale = 1e-3 * (supply.frequency.nominal if supply.frequency else 50.0) / 50.0
         sheet.assume(f"{place}.reactance", si.RESISTANCE_PER_LENGTH, 0.1 * scale, 0.07 * scale, 0.15 * scale,
                      TYPICAL_REACTANCE)
-    _collect_heat(sheet, place, run, 2)
+    _collect_heat(sheet, place, run, 3 if feed.balanced else 2, shared=place.startswith("feeder"))
 
 
-def _collect_heat(sheet: DataSheet, place: str, run: Cable, loaded: int) -> None:
+def _collect_heat(sheet: DataSheet, place: str, run: Cable, loaded: int, shared: bool) -> None:
     """What the conductor's temperature needs; where it is not stated, the range it can lie in."""
     absent = tuple(f"{place}.{word}" for word in NEED_HEAT if getattr(run, word) is None)
+    if shared:
+        absent = ("the current of the whole board",)
     highest = ampacity.highest_temperature(run.insulation)[0] if run.insulation else 90.0
     if not sheet.state(f"{place}.ambient", run.ambient):
         sheet.assume(f"assumed {place}.ambient", si.TEMPERATURE, 20.0, 20.0, 20.0, COLD_REFERENCE)
@@ -144,6 +172,12 @@ def counts_of(load: LoadEntry, place: str) -> list[tuple[str, int]]:
     return found
 
 
+def circuit_tree(entry: CircuitEntry, load: LoadEntry, feed: Feed) -> Node:
+    """The load tree of a circuit, inside a delta where it stands between the lines of three phases."""
+    tree = tree_of(load, "load")
+    return Node("delta", "delta", (tree,)) if feed.balanced and entry.connection == "delta" else tree
+
+
 def tree_of(load: LoadEntry, place: str) -> Node:
     """The load tree without its numbers."""
     kind = load.kind
@@ -155,24 +189,34 @@ def tree_of(load: LoadEntry, place: str) -> Node:
     return node if load.count == 1 else Node("several", place, (node,))
 
 
-def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: int, kinds: Kinds) -> Worksheet:
+def way_of(feed: Feed, entry: CircuitEntry) -> tuple[str, ...]:
+    """Places of every feeder and cable run from the origin to the load."""
+    return (*(place for place, _ in feed.runs), *(f"cable[{index}]" for index in range(len(entry.cable or ()))))
+
+
+def worksheet(state: State, system: str, present: DataSheet, tree: Node, way: tuple[str, ...], kinds: Kinds) -> Worksheet:
     """The lines of one state, from the load upward for impedance and from the origin downward for voltage and current."""
     plan = Plan(Worksheet(), state, system, present)
     put = plan.sheet.put
     if "cable" in present.lacks:
         cables: list[Key] = [plan.datum("cable")]
     else:
-        cables = [_cable(plan, f"cable[{index}]") for index in range(runs)]
+        cables = [_cable(plan, place) for place in way]
+    if "feeders" in present.lacks:
+        cables = [plan.datum("feeders"), *cables]
     load = impedance_of(plan, tree, kinds)
     supply = "supply.voltage" if state.source in ("as supplied", "other frequency") else "supply.nominal_voltage"
     source = put("supply phasor", "", steps.reference_phasor, figure=False, voltage=plan.datum(supply))
     put("voltage", "", phasors.magnitude_of_voltage, voltage=source)
+    if plan.alike:
+        put("line-voltage", "", feeding.line_voltage, voltage=Key("voltage", ""))
+    arriving = _less_others(plan, source)
     if load is None:
         current = put("current phasor", "", steps.blocked_current, figure=False, voltage=source)
         for key in cables:
             if key in plan.sheet.lacks:
                 current = plan.sheet.lack("current phasor", "", *plan.sheet.lacks[key].needs)
-        terminal = put("voltage phasor", tree.place, steps.shared_voltage, figure=False, voltage=source)
+        terminal = put("voltage phasor", tree.place, steps.shared_voltage, figure=False, voltage=arriving)
     else:
         total = put("impedance phasor", "", phasors.series_impedance, figure=False, impedances=(*cables, load))
         put("resistance", "", steps.resistance_part, impedance=total)
@@ -181,21 +225,35 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, runs: i
         put("impedance", "", steps.magnitude_of_impedance, impedance=total)
         if not plan.direct:
             put("impedance-angle", "", steps.angle_of_impedance, impedance=total)
-        current = put("current phasor", "", phasors.current_phasor, figure=False, voltage=source, impedance=total)
+        current = put("current phasor", "", phasors.current_phasor, figure=False, voltage=arriving, impedance=total)
         terminal = put("voltage phasor", tree.place, phasors.voltage_phasor, figure=False, current=current, impedance=load)
     if load is None:
         put("current", "", phasors.magnitude_of_current, current=current)
     else:
-        put("current", "", steps.current_through, voltage=Key("voltage", ""), impedance=Key("impedance", ""))
+        put("current", "", steps.current_through, voltage=Key("arriving-voltage" if arriving != source else "voltage", ""),
+            impedance=Key("impedance", ""))
     write_power_figures(plan, "", source, current)
-    for index in range(runs):
-        _cable_figures(plan, f"cable[{index}]", current)
+    for place in way:
+        _cable_figures(plan, place, current)
     _drop(plan, terminal)
     entry = put("current phasor", tree.place, steps.shared_current, figure=False, current=current)
     share_out(plan, tree, kinds, terminal, entry)
     if state.name == "switch-on":
         _switch_on(plan, tree, kinds)
     return plan.sheet.finish()
+
+
+def _less_others(plan: Plan, source: Key) -> Key:
+    """The source less what the others on the boards drop; the source itself where there are none."""
+    if plan.token("others") != "known":
+        return source
+    put = plan.sheet.put
+    dropped = put("voltage phasor", "others", feeding.drop_of_the_others, figure=False, voltage=source,
+                  share=plan.datum("others running"), in_phase=plan.datum("others' drop in phase"),
+                  across=plan.datum("others' drop across"))
+    arriving = put("arriving voltage phasor", "", feeding.arriving_voltage, figure=False, sending=source, dropped=dropped)
+    put("arriving-voltage", "", phasors.magnitude_of_voltage, voltage=arriving)
+    return arriving
 
 
 def _cable(plan: Plan, place: str) -> Key:
@@ -212,14 +270,14 @@ def _cable(plan: Plan, place: str) -> Key:
                     resistance_per_length_20=plan.datum(f"{place}.resistance_per_metre"), temperature=temperature,
                     inferred_zero=plan.datum(f"{place}.inferred_zero"))
     resistance = put("resistance", place, conductors.run_resistance, resistance_per_length=per_metre,
-                     length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
+                     length=plan.datum(f"{place}.length"), conductors=plan.datum("conductors"))
     if plan.direct:
         return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
     at_frequency = put("reactance-per-metre", place, conductors.reactance_at_frequency,
                        reactance_per_length=plan.datum(f"{place}.reactance"), frequency=plan.frequency(),
                        tabled_frequency=plan.datum("cable frequency"))
     reactance = put("reactance", place, conductors.run_reactance, reactance_per_length=at_frequency,
-                    length=plan.datum(f"{place}.length"), conductors=plan.datum("two conductors"))
+                    length=plan.datum(f"{place}.length"), conductors=plan.datum("conductors"))
     return put("impedance phasor", place, phasors.impedance_phasor, figure=False, resistance=resistance, reactance=reactance)
 
 
@@ -274,6 +332,6 @@ def _switch_on(plan: Plan, tree: Node, kinds: Kinds) -> None:
 def _one_inductive_path(node: Node, kinds: Kinds) -> bool:
     if node.kind == "parallel":
         return len(node.nodes) == 1 and _one_inductive_path(node.nodes[0], kinds)
-    if node.kind in ("series", "several"):
+    if node.kind in ("series", "several", "delta"):
         return all(_one_inductive_path(one, kinds) for one in node.nodes)
     return kinds[node.kind].resistance_and_inductance

@@ -9,7 +9,7 @@ from typing import Any, ClassVar, Generic, TypeAlias, TypeVar
 
 from pydantic import BaseModel
 
-from circuitlint.physics import phasors, power_factor, steps
+from circuitlint.physics import feeding, phasors, power_factor, steps
 from circuitlint.study.data import DataSheet
 from circuitlint.study.states import State
 from circuitlint.study.worksheet import Key, Worksheet
@@ -27,6 +27,11 @@ class Plan:
     present: DataSheet
     """Only presence, tokens and lacks may be asked of it: worksheets are shared by circuits of one signature."""
     leaves: list[tuple[str, LoadKind[Any]]] = field(default_factory=list)
+
+    @property
+    def alike(self) -> bool:
+        """Whether three phases are loaded alike, so that one stands for all."""
+        return self.token("feed") == "balanced"
 
     @property
     def direct(self) -> bool:
@@ -100,8 +105,8 @@ class LoadKind(ABC, Generic[M]):
         )
 
 
-COMPOSED = ("series", "parallel", "several")
-"""Kinds of node that are not loads themselves; `several` is a number of equal loads in parallel."""
+COMPOSED = ("series", "parallel", "several", "delta")
+"""Kinds of node that are not loads themselves: `several` is a number of equal loads in parallel, `delta` three between lines."""
 
 Kinds: TypeAlias = Mapping[str, "LoadKind[Any]"]
 
@@ -128,6 +133,11 @@ def impedance_of(plan: Plan, node: Node, kinds: Kinds) -> Key | None:
             return None
         return plan.sheet.put("impedance phasor", node.place, steps.impedance_of_several, figure=False, impedance=one,
                               count=plan.datum(f"{node.place}.count"))
+    if node.kind == "delta":
+        branch = impedance_of(plan, node.nodes[0], kinds)
+        if branch is None:
+            return None
+        return plan.sheet.put("impedance phasor", node.place, feeding.star_of_delta, figure=False, impedance=branch)
     if node.kind not in COMPOSED:
         plan.leaves.append((node.place, kinds[node.kind]))
         return kinds[node.kind].impedance(plan, node.place)
@@ -139,7 +149,9 @@ def impedance_of(plan: Plan, node: Node, kinds: Kinds) -> Key | None:
     return plan.sheet.put("impedance phasor", node.place, joined, figure=False, impedances=passing)
 
 
-def share_out(plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key | None, blocked: bool = False) -> None:
+def share_out(
+    plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key | None, blocked: bool = False, inside_delta: bool = False
+) -> None:
     """Write voltages and currents from a node downward; `current` is None where a parallel branch finds its own."""
     put = plan.sheet.put
     own = plan.phasor("impedance", node.place)
@@ -156,15 +168,16 @@ def share_out(plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key |
         write_impedance_figures(plan, node.place)
         put("current", node.place, steps.current_through, voltage=Key("voltage", node.place),
             impedance=Key("impedance", node.place))
-    write_power_figures(plan, node.place, voltage, current)
+    write_power_figures(plan, node.place, voltage, current, inside_delta)
     if node.kind not in COMPOSED:
         kinds[node.kind].figures(plan, node.place)
         return
     closed = [one for one in node.nodes if not _passes(plan, one)]
     for one in node.nodes:
         if node.kind != "series":
-            share = put("voltage phasor", one.place, steps.shared_voltage, figure=False, voltage=voltage)
-            share_out(plan, one, kinds, share, None)
+            taken = feeding.delta_voltage if node.kind == "delta" else steps.shared_voltage
+            share = put("voltage phasor", one.place, taken, figure=False, voltage=voltage)
+            share_out(plan, one, kinds, share, None, inside_delta=inside_delta or node.kind == "delta")
             continue
         flow = put("current phasor", one.place, steps.shared_current, figure=False, current=current)
         if not blocked:
@@ -176,7 +189,7 @@ def share_out(plan: Plan, node: Node, kinds: Kinds, voltage: Key, current: Key |
             share = plan.sheet.lack("voltage phasor", one.place, why="direct voltage shared by capacitors in series")
         else:
             share = put("voltage phasor", one.place, steps.no_voltage, figure=False, voltage=voltage)
-        share_out(plan, one, kinds, share, flow, blocked)
+        share_out(plan, one, kinds, share, flow, blocked, inside_delta)
 
 
 def write_impedance_figures(plan: Plan, place: str) -> None:
@@ -187,9 +200,21 @@ def write_impedance_figures(plan: Plan, place: str) -> None:
         plan.sheet.put("impedance-angle", place, steps.angle_of_impedance, impedance=phasor)
 
 
-def write_power_figures(plan: Plan, place: str, voltage: Key, current: Key) -> None:
-    """Complex power of a part, and its active, reactive and apparent parts with the power factor."""
+def write_power_figures(plan: Plan, place: str, voltage: Key, current: Key, inside_delta: bool = False) -> None:
+    """Complex power of a part, and its active, reactive and apparent parts with the power factor.
+
+    Where three phases are loaded alike it is the power of all three; of one part inside a delta, its own.
+    """
     put = plan.sheet.put
+    if plan.alike and not inside_delta:
+        one = put("power of one phase phasor", place, power_factor.complex_power, figure=False, voltage=voltage, current=current)
+        power = put("power phasor", place, feeding.power_of_three_phases, figure=False, power=one)
+        put("active-power", place, steps.active_part, power=power)
+        put("reactive-power", place, steps.reactive_part, power=power)
+        put("apparent-power", place, steps.magnitude_of_power, power=power)
+        put("power-factor", place, power_factor.power_factor, active=Key("active-power", place),
+            apparent=Key("apparent-power", place))
+        return
     power = put("power phasor", place, power_factor.complex_power, figure=False, voltage=voltage, current=current)
     active = put("active-power", place, steps.active_part, power=power)
     if plan.direct:
@@ -206,7 +231,7 @@ def _passes(plan: Plan, node: Node) -> bool:
         return True
     if node.kind == "series":
         return all(_passes(plan, one) for one in node.nodes)
-    if node.kind in ("parallel", "several"):
+    if node.kind in ("parallel", "several", "delta"):
         return any(_passes(plan, one) for one in node.nodes)
     key = plan.phasor("impedance", node.place)
     return key in plan.sheet.index or key in plan.sheet.lacks

@@ -20,7 +20,8 @@ from circuitlint.si import Dimension, RealArray
 from circuitlint.study import cases
 from circuitlint.study.balance import BOUND, imbalance
 from circuitlint.study.data import DataSheet, Datum
-from circuitlint.study.network import collect, tree_of, worksheet
+from circuitlint.study.feeding import Boards, BoardState, Feed, Loading, drop_by_others, ends_of, feed_of, source_voltage
+from circuitlint.study.network import circuit_tree, collect, way_of, worksheet
 from circuitlint.study.plan import Kinds, Node, shape_of
 from circuitlint.study.states import State, states_of
 from circuitlint.study.worksheet import Key, Lack, Line, Worksheet
@@ -79,6 +80,9 @@ class CircuitStudy:
     supply: Supply
     tree: Node
     data: DataSheet
+    feed: Feed
+    way: tuple[str, ...]
+    """Places of every feeder and cable run from the origin to the load."""
     position: int = 0
     solutions: dict[str, Solution] = field(default_factory=dict)
     places: dict[Path, object] = field(default_factory=dict)
@@ -96,8 +100,8 @@ class CircuitStudy:
 
     @property
     def system(self) -> str:
-        """`dc`, `single-phase` or `three-phase`."""
-        return self.supply.system
+        """`dc`, `single-phase` or, where three phases are loaded alike, `three-phase`."""
+        return {"dc": "dc", "balanced": "three-phase"}.get(self.feed.kind, "single-phase")
 
     def states(self) -> tuple[str, ...]:
         """Names of the states studied."""
@@ -187,39 +191,106 @@ def study(
     """
     studies: list[CircuitStudy] = []
     groups: dict[Any, list[CircuitStudy]] = {}
+    boards = study_boards(installation, kinds) if installation.boards else {}
+    others = {tag: drop for state in boards.values() for tag, drop in state.drops.items()}
     for definition in installation.circuits:
-        entry = definition.entry
-        load = entry.load  # type: ignore[attr-defined]
-        supply = installation.supplies[entry.fed_from]
-        tree = tree_of(load, "load")
-        one = CircuitStudy(definition, supply, tree, collect(entry, supply, tree, load, kinds))
+        one = prepare(definition, installation, kinds, others.get(definition.entry.tag))
         studies.append(one)
-        key = (supply.system, shape_of(tree), len(entry.cable or ()), one.data.signature())
+        key = (one.system, shape_of(one.tree), one.way, one.data.signature())
         groups.setdefault(key, []).append(one)
     for group in groups.values():
         _study_group(group, kinds, sought, wanted)
     return studies
 
 
+def prepare(
+    definition: CircuitDefinition, installation: Installation, kinds: Kinds, others: complex | None = None
+) -> CircuitStudy:
+    """A circuit with its data and its tree, not yet solved."""
+    entry = definition.entry
+    load = entry.load  # type: ignore[attr-defined]
+    feed = feed_of(entry, installation)
+    data = collect(entry, feed, load, kinds, others)
+    return CircuitStudy(definition, feed.supply, circuit_tree(entry, load, feed), data, feed, way_of(feed, entry))
+
+
+def study_boards(installation: Installation, kinds: Kinds) -> dict[str, BoardState]:
+    """Every board at nominal values with everything running, by name.
+
+    Each circuit is solved alone, cold and at nominal values, and taken as the admittance that this gives; two rounds, so that
+    loads of constant power see the voltage they get.
+    """
+    found: dict[str, BoardState] = {}
+    for name in installation.supplies:
+        boards = Boards(installation, name)
+        on_boards = [one for one in installation.circuits if one.entry.fed_from in boards.boards]
+        if not on_boards:
+            continue
+        drops: dict[str, complex] = {}
+        for _ in range(2):
+            alone = [prepare(one, installation, kinds, drops.get(one.entry.tag, 0j)) for one in on_boards]
+            loadings, currents = _loadings(alone, kinds)
+            states = boards.solve(loadings)
+            for one in alone:
+                if one.tag in currents:
+                    own_path = _own_path(one, boards)
+                    state = states[one.entry.fed_from]
+                    drop = drop_by_others(state, one.feed, one.entry.phase, currents[one.tag], own_path)
+                    drops[one.tag] = drop / source_voltage(one.feed, one.entry.phase)
+        for state in states.values():
+            state.drops = {tag: drops[tag] for tag in state.circuits if tag in drops}
+        found |= states
+    return found
+
+
+def _own_path(one: CircuitStudy, boards: Boards) -> complex:
+    """Impedance of the feeders in a circuit's own loop."""
+    total = sum((boards.feeder(name) for name in one.feed.boards), 0j)
+    return total * (2.0 if boards.three and not one.feed.balanced else 1.0)
+
+
+def _loadings(alone: Sequence[CircuitStudy], kinds: Kinds) -> tuple[list[Loading], dict[str, complex]]:
+    """Each circuit as an admittance at its board, and the current it draws, both nominal, cold and with its diversity."""
+    loadings: list[Loading] = []
+    currents: dict[str, complex] = {}
+    for one in alone:
+        state = states_of(one.system, ("cold",))[0]
+        sheet = worksheet(state, one.system, one.data, one.tree, one.way, kinds)
+        current, source = Key("current phasor", ""), source_voltage(one.feed, one.entry.phase)
+        if current in sheet.lacks:
+            continue
+        values = sheet.only([current, *(Key("voltage phasor", place) for place in one.way)]).run(
+            {Key("", path): datum.nominal for path, datum in one.data.data.items()})
+        turned = complex(values[current]) * source / abs(source)
+        upstream = sum((complex(values[Key("voltage phasor", place)]) for place in one.way if place.startswith("feeder")), 0j)
+        arriving = source - upstream * source / abs(source) - one.data.data["others' drop in phase"].nominal * source \
+            - 1j * one.data.data["others' drop across"].nominal * source
+        share = one.entry.diversity.nominal if one.entry.diversity else 1.0
+        loadings.append(Loading(one.tag, one.entry.fed_from, ends_of(one.feed.kind, one.entry.phase), share * turned / arriving))
+        currents[one.tag] = share * turned
+    return loadings, currents
+
+
 def _study_group(
     group: list[CircuitStudy], kinds: Kinds, sought: Collection[str] | None, wanted: Collection[str] | None
 ) -> None:
     first = group[0]
-    runs = len(first.entry.cable or ())
     ends = np.array([[(one.low, one.nominal, one.high) for one in study.data.data.values()] for study in group])
     table = {path: ends[:, number] for number, path in enumerate(first.data.data)}
     for position, one in enumerate(group):
         one.position = position
     for state in states_of(first.system, wanted):
-        sheet = worksheet(state, first.system, first.data, first.tree, runs, kinds)
-        solution = solve(state, sheet, first.data.data, table, len(group), first.tree, runs, sought)
+        sheet = worksheet(state, first.system, first.data, first.tree, first.way, kinds)
+        along = (*first.way, *(("others",) if first.data.tokens.get("others") == "known" else ()))
+        phases = 3 if first.feed.balanced else 1
+        solution = solve(state, sheet, first.data.data, table, len(group), first.tree, along, sought, phases)
         for one in group:
             one.solutions[state.name] = solution
 
 
 def solve(
     state: State, sheet: Worksheet, data: Mapping[str, Datum], table: Mapping[str, RealArray], circuits: int, tree: Node,
-    runs: int, sought: Collection[str] | None,
+    along: Sequence[str], sought: Collection[str] | None, phases: int = 1,
 ) -> Solution:
     """One state of a group: run the worksheet over the opening points, then refine what is sought."""
     used = {key.of for line in sheet.lines for argument in line.arguments.values()
@@ -248,7 +319,7 @@ def solve(
         vertices = np.clip(cases.vertices_by_sensitivity(picked, len(inputs)), -1.0, 1.0)
         points = np.concatenate([np.broadcast_to(opening, (circuits, *opening.shape[1:])), vertices], axis=1)
         found = np.concatenate([found, figures(run(vertices), lines, vertices.shape[1])], axis=2)
-    faulty = _faulty(sheet, values, found, tree, runs, circuits, opening.shape[1])
+    faulty = _faulty(sheet, values, found, tree, along, circuits, opening.shape[1], phases)
     lowest = np.min(found, axis=2) if lines else np.zeros((0, circuits))
     highest = np.max(found, axis=2) if lines else np.zeros((0, circuits))
     studied = points.shape[1]
@@ -293,10 +364,11 @@ def _put_in(
 
 
 def _faulty(
-    sheet: Worksheet, values: Mapping[Key, Any], found: RealArray, tree: Node, runs: int, circuits: int, points: int
+    sheet: Worksheet, values: Mapping[Key, Any], found: RealArray, tree: Node, along: Sequence[str], circuits: int, points: int,
+    phases: int,
 ) -> list[str]:
     """Why a circuit has no figures in this state, or an empty text; in the order of the circuits."""
-    apart = np.broadcast_to(imbalance(values, tree, runs), (circuits, points))
+    apart = np.broadcast_to(imbalance(values, tree, along, phases), (circuits, points))
     unbalanced = np.any(~(apart <= BOUND), axis=1)
     astray = np.any(~np.isfinite(found), axis=(0, 2)) if found.size else np.zeros(circuits, dtype=bool)
     reasons = [UNBALANCED if one else "" for one in unbalanced]
