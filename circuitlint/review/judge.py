@@ -14,7 +14,7 @@ from circuitlint.review.rule import Comparison, Fact, Holds, Outcome, Rule, Unkn
 from circuitlint.review.worked import worked_line
 from circuitlint.si import RATIO, Dimension
 from circuitlint.study.study import CircuitStudy, Figure
-from circuitlint.study.worksheet import Lack
+from circuitlint.study.worksheet import Key, Lack
 
 
 @dataclass(slots=True)
@@ -109,13 +109,16 @@ class Judge:
             result, basis, severity = "nonconforming", "worst case", self.severities["worst_case"]
         elif margin is not None and margin < self.near:
             basis, severity = "near the limit", self.severities["near_limit"]
+        share = uncertainty = None
+        if basis == "worst case":
+            share, uncertainty = circuit.share_beyond(figure.state, Key(figure.name, figure.of), limit.value, least)
         return record.Check(
             id=self._id(circuit, figure.name, figure.state, figure.of, limit.name), rule=self.rule.name,
             state=figure.state, figure=figure.name, of=figure.of, sense=outcome.sense,
             dimension=figure.dimension.name, nominal=figure.nominal, worst=worst,
             limit=self._limit(limit),
             result=result, basis=basis, severity=severity, margin=margin, nominal_margin=nominal_margin,
-            moved_by=figure.moved_by,
+            moved_by=figure.moved_by, share_beyond=share, share_beyond_uncertainty=uncertainty,
             what=sentence(figure, worst, limit, least, basis) if basis is not None else plain_sentence(figure, least),
             why=worked_line(circuit, figure) if severity is not None else "",
             help=(outcome.help or self.rule.helps) if severity is not None else "", place=place_of(circuit, at),

@@ -28,6 +28,8 @@ from circuitlint.study.worksheet import Key, Lack, Line, Worksheet
 
 UNSETTLED = "in some case within the tolerances the temperatures do not settle (thermal runaway)"
 OUT_OF_RANGE = "in some case within the tolerances the data leave the range of a formula"
+SEED = 60364
+DRAWS = 2000
 UNBALANCED = "the solution does not balance to 1e-9, so no figure is given"
 
 
@@ -169,6 +171,23 @@ class CircuitStudy:
         value = solution.values[key] if key in solution.values else self.data.data[key.of].nominal
         at = np.broadcast_to(np.asarray(value), (solution.circuits, solution.points))[self.position, 0]
         return complex(at) if np.iscomplexobj(at) else float(at)
+
+    def share_beyond(self, state: str, key: Key, limit: float, least: bool) -> tuple[float, float]:
+        """The share of the tolerance box in which a figure is beyond a limit, and the standard uncertainty of that share.
+
+        Every toleranced input is drawn alike over its whole range and apart from the others (JCGM 101:2008, 6.4.2), with a fixed
+        seed, so that the same definition gives the same share.
+        """
+        solution = self.solutions[state]
+        drawn = np.random.default_rng(SEED).uniform(-1.0, 1.0, (len(solution.inputs), DRAWS))
+        values: dict[Key, Any] = {Key("", path): datum.nominal for path, datum in self.data.data.items()}
+        for row, path in enumerate(solution.inputs):
+            datum = self.data.data[path]
+            up, down = datum.high - datum.nominal, datum.nominal - datum.low
+            values[Key("", path)] = datum.nominal + np.where(drawn[row] > 0.0, drawn[row] * up, drawn[row] * down)
+        found = np.broadcast_to(np.asarray(solution.sheet.only([key]).run(values)[key], dtype=float), (DRAWS,))
+        share = float(np.mean(~(found >= limit if least else found <= limit)))
+        return share, float(np.sqrt(max(share * (1.0 - share), 1.0 / DRAWS) / DRAWS))
 
     def spread(self, state: str, key: Key) -> RealArray:
         """A figure at every opening point of the tolerance box; shape (points,)."""

@@ -90,3 +90,19 @@ def test_the_least_current_of_a_compensated_circuit_lies_inside_the_box() -> Non
         inside += figure.lowest < float(np.min(at_corners)) * (1 - 1e-6)
     assert inside >= 3
     assert COLD.name == "cold"
+
+
+def test_the_share_of_the_box_beyond_a_limit_agrees_with_the_exact_one() -> None:
+    """A resistor of ± 10 % on 230 V ± 10 %: the current is above 12.0 A on a part of the box that integrates in closed form."""
+    text = """
+format: 1
+supplies: {s: {system: dc, voltage: 230 V ± 10 %}}
+circuits: {tag: A, fed_from: s, ambient: 20 degC, cable: [], load: {resistor: {resistance: 20 ohm ± 10 %}}}
+"""
+    circuit = study(read_text(text), CORE)[0]
+    share, uncertainty = circuit.share_beyond("cold", Key("current", ""), 12.0, False)
+    # U / R > 12 over U in 207..253, R in 18..22: the mean over R of the part of U above 12 R.
+    above = np.clip((253.0 - 12.0 * np.linspace(18.0, 22.0, 100001)) / 46.0, 0.0, 1.0)
+    exact = float(np.mean(above))
+    assert uncertainty == pytest.approx(np.sqrt(exact * (1 - exact) / 2000), rel=0.1)
+    assert abs(share - exact) < 3 * uncertainty
