@@ -11,11 +11,11 @@ import sys
 from collections.abc import Callable, Sequence
 
 import circuitlint
-from circuitlint.commands import figures, review, rules, schema
+from circuitlint.commands import compare, figures, report, review, rules, schema
 from circuitlint.errors import CircuitlintError, InputError
 
 NOTHING_HELD, AT_FAULT, FAILED = 0, 2, 3
-COMMANDS = (review, figures, rules, schema)
+COMMANDS = (review, figures, rules, compare, report, schema)
 """In the order of the help."""
 
 

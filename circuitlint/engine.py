@@ -16,7 +16,8 @@ from circuitlint.review import record as r
 from circuitlint.review.assembly import Assembly
 from circuitlint.review.judge import Judge
 from circuitlint.review.rule import Rule
-from circuitlint.study.study import CircuitStudy, study
+from circuitlint.study.installation import study
+from circuitlint.study.study import CircuitStudy
 
 
 @dataclass(slots=True)

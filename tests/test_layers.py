@@ -35,7 +35,7 @@ STAIRCASE: tuple[tuple[str, ...], ...] = (
     ("circuitlint.engine",),
     ("circuitlint.reports",),
     ("circuitlint.demo",),
-    ("circuitlint.commands.output", "circuitlint.commands.job"),
+    ("circuitlint.commands.output", "circuitlint.commands.job", "circuitlint.commands.stored"),
     ("circuitlint.commands",),
     ("circuitlint.cli",),
     ("circuitlint.__main__",),

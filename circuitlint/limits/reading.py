@@ -14,7 +14,7 @@ from circuitlint import si
 from circuitlint.definition.faults import faults_of
 from circuitlint.definition.text import Builder, Step, Text, fault_at, follow, key_node, parse
 from circuitlint.errors import Fault, QuantityError, RulesetError
-from circuitlint.limits.models import OCCASIONS, Limit, LimitSpec, RawLimit, RulesetFile, RuleTerms, Ruleset
+from circuitlint.limits.models import OCCASIONS, Limit, LimitSpec, RawLimit, Ruleset, RulesetFile, RuleTerms
 from circuitlint.quantity import read
 from circuitlint.sources import Source
 

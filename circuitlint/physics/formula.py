@@ -53,18 +53,41 @@ def formula(
     """
 
     def wrap(function: Callable[P, R]) -> Formula[P, R]:
-        hints = function.__annotations__
-        arguments = {name for name in hints if name != "return"}
-        if arguments != set(symbols):
-            raise TypeError(f"{function.__name__}: symbols {sorted(symbols)} do not match arguments {sorted(arguments)}")
-        name = function.__name__.replace("_", "-")
-        if name in FORMULAS:
-            raise TypeError(f"formula {name} is defined twice")
-        made = Formula(name, result, equation, dict(symbols), source, validity, function, _dimension_of(function))
-        FORMULAS[name] = made
+        made = make(function, result, equation, source, validity, symbols)
+        if made.name in FORMULAS:
+            raise TypeError(f"formula {made.name} is defined twice")
+        FORMULAS[made.name] = made
         return made
 
     return wrap
+
+
+def formula_of_a_plugin(
+    result: str, equation: str, *, source: Source, validity: str = "", **symbols: str
+) -> Callable[[Callable[P, R]], Formula[P, R]]:
+    """Make a keyword-only function a formula of one's own; two plugins may each have one of the same name.
+
+    `result` is the symbol of the result, `equation` the right-hand side with the symbols in braces, and each argument is
+    given its symbol by name. Raises TypeError when an argument has no symbol, a symbol has no argument, or the return type
+    names no dimension.
+    """
+
+    def wrap(function: Callable[P, R]) -> Formula[P, R]:
+        return make(function, result, equation, source, validity, symbols)
+
+    return wrap
+
+
+def make(
+    function: Callable[P, R], result: str, equation: str, source: Source, validity: str, symbols: Mapping[str, str]
+) -> Formula[P, R]:
+    """A formula of a keyword-only function. Raises TypeError where symbols, arguments and dimension do not fit."""
+    hints = function.__annotations__
+    arguments = {name for name in hints if name != "return"}
+    if arguments != set(symbols):
+        raise TypeError(f"{function.__name__}: symbols {sorted(symbols)} do not match arguments {sorted(arguments)}")
+    name = function.__name__.replace("_", "-")
+    return Formula(name, result, equation, dict(symbols), source, validity, function, _dimension_of(function))
 
 
 def _dimension_of(function: Callable[..., Any]) -> Dimension:

@@ -73,10 +73,11 @@ def _factor(resistance: Real, reactance: Real) -> Real:
     """Peak over the crest of the settled current, from the exact root of its time of occurrence.
 
     With x = ωt the current peaks where cos(x − φ) = cos φ · exp(−x R / X); the first root beyond π/2 lies below π/2 + φ.
-    Bisection brings the bracket close enough for Newton's steps to converge.
+    Bisection brings the bracket close enough for Newton's steps to converge. NaN where the reactance is capacitive.
     """
-    ratio = np.divide(resistance, np.where(np.asarray(reactance) > 0.0, reactance, 1.0))
-    angle = np.arctan2(np.asarray(reactance, dtype=float), resistance)
+    inductive = np.greater(reactance, 0.0)
+    ratio = np.divide(resistance, np.where(inductive, reactance, 1.0))
+    angle = np.arctan2(reactance, resistance)
     low = np.full(np.shape(angle), np.pi / 2.0)
     high = np.pi / 2.0 + angle
     for _ in range(8):
@@ -90,7 +91,7 @@ def _factor(resistance: Real, reactance: Real) -> Real:
         step = (np.cos(at - angle) - fading) / np.where(slope != 0.0, slope, 1.0)
         at = np.clip(at - step, low, high)
     factor = np.sin(at - angle) + np.exp(-at * ratio) * np.sin(angle)
-    return np.where(np.asarray(reactance) > 0.0, np.maximum(factor, 1.0), 1.0)
+    return np.where(inductive, np.maximum(factor, 1.0), np.where(np.equal(reactance, 0.0), 1.0, np.nan))
 
 
 @formula(

@@ -7,17 +7,18 @@ from collections.abc import Iterator, Sequence
 from circuitlint.errors import InputError
 from circuitlint.reports import comparison_page
 from circuitlint.reports.comparison_words import (
+    ARROW,
     UNCHANGED,
     becoming,
     datum,
     figure_row,
     headline,
     lost,
-    margin_row,
+    margin_rows,
     name_of,
     numbers,
     severities,
-    side,
+    sides,
     told_apart,
 )
 from circuitlint.reports.json_record import unseen_escaped
@@ -29,6 +30,7 @@ from circuitlint.reports.terminal import (
     hung,
     left,
     listed,
+    para,
     printable,
     prose,
     rows,
@@ -72,10 +74,7 @@ def render_text(comparison: Comparison, *, width: int = 80, colour: bool = False
 
 def _heading(comparison: Comparison, width: int, paint: Paint) -> list[str]:
     lines = [paint.strong(line) for line in wrapped(prose(comparison.after.title) or "Untitled definition", width)]
-    sides = {"before": side(comparison.before), "after": side(comparison.after)}
-    if sides["before"] == sides["after"]:
-        sides = {"both": sides["after"]}
-    for label, told in sides.items():
+    for label, told in sides(comparison).items():
         lines += hung(label, wrapped(told, width - 10), 2, 8)
     told = headline(comparison)
     return [*lines, "", *wrapped(told, width)] if told else lines
@@ -84,11 +83,7 @@ def _heading(comparison: Comparison, width: int, paint: Paint) -> list[str]:
 def _sections(comparison: Comparison, width: int, paint: Paint) -> Iterator[tuple[str, list[str]]]:
     yield (
         "Failed",
-        [
-            line
-            for one in comparison.problems
-            for line in hung("", wrapped(prose(f"{one.rule or one.plugin}: {one.what}"), width - 2), 2, 0)
-        ],
+        [line for one in comparison.problems for line in para(prose(f"{one.rule or one.plugin}: {one.what}"), width, 2)],
     )
     yield "New findings", list(_changes(comparison.new, width, paint))
     yield "Changed findings", list(_changes(comparison.changed, width, paint))
@@ -99,16 +94,14 @@ def _sections(comparison: Comparison, width: int, paint: Paint) -> Iterator[tupl
     yield "Limits changed", _plain(_limits(comparison), width)
     yield (
         "Terms changed",
-        _plain(
-            (f"{prose(one.what)}: {becoming(prose(one.before), prose(one.after))}" for one in comparison.terms), width
-        ),
+        _plain((f"{prose(one.what)}: {becoming(prose(one.before), prose(one.after))}" for one in comparison.terms), width),
     )
     yield "Margins moved", _margins(comparison, width)
     yield "Figures moved", _figures(comparison, width)
 
 
 def _plain(lines: Iterator[str], width: int) -> list[str]:
-    return [line for text in lines for line in hung("", wrapped(text, width - 2), 2, 0)]
+    return [line for text in lines for line in para(text, width, 2)]
 
 
 def _changes(changes: Sequence[FindingChange], width: int, paint: Paint) -> Iterator[str]:
@@ -118,9 +111,9 @@ def _changes(changes: Sequence[FindingChange], width: int, paint: Paint) -> Iter
         head = f"{printable(one.tag)}  {prose(one.serves)}".rstrip()
         yield f"  {paint.word(one.after or one.before or '', left(word, field))}  {clipped(head, width - field - 4)}"
         sentence = "; ".join(part for part in (name_of(one), told_apart(one)) if part)
-        yield from hung("", wrapped(sentence, width - 6), 6, 0)
+        yield from para(sentence, width, 6)
         if told := numbers(one):
-            yield from hung("", wrapped(told, width - 6), 6, 0)
+            yield from para(told, width, 6)
         if one.help:
             yield from hung("help", wrapped(prose(one.help), width - 13), 6, 7)
         for line in hung("where", wrapped(place_of(one.place), width - 13), 6, 7) if one.after else ():
@@ -145,36 +138,32 @@ def _limits(comparison: Comparison) -> Iterator[str]:
 
 
 def _margins(comparison: Comparison, width: int) -> list[str]:
-    """Margins of checks that the findings above do not tell of already."""
+    """Margins that moved by what can be seen, of checks that the findings above do not tell of already."""
     told = {one.check for one in (*comparison.new, *comparison.changed, *comparison.gone)}
-    moves = [move for move in comparison.margins if move.check not in told]
-    if not moves:
+    table = [row for row in margin_rows(move for move in comparison.margins if move.check not in told) if ARROW in row[2]]
+    if not table:
         return []
-    lines = rows([("", "worst", "margin"), *map(margin_row, moves[:MOST_MARGINS])], width, 2)
-    if len(moves) > MOST_MARGINS:
-        lines.append(f"  and {counted(len(moves) - MOST_MARGINS, 'margin')} that moved less")
+    lines = rows([("", "worst", "margin"), *table[:MOST_MARGINS]], width, 2)
+    if len(table) > MOST_MARGINS:
+        lines.append(f"  and {counted(len(table) - MOST_MARGINS, 'margin')} that moved less")
     return lines
 
 
 def _figures(comparison: Comparison, width: int) -> list[str]:
     """The figures of each circuit that moved farthest and are not told of above."""
-    told = {
-        (one.tag, one.figure, one.of, one.state) for one in (*comparison.new, *comparison.changed, *comparison.margins)
-    }
+    told = {(one.tag, one.figure, one.of, one.state) for one in (*comparison.new, *comparison.changed, *comparison.margins)}
     circuits: dict[str, list[FigureMove]] = {}
     for move in comparison.figures:
         if (move.tag, move.name, move.of, move.state) not in told:
             circuits.setdefault(move.tag, []).append(move)
     lines: list[str] = []
     for tag, moves in list(circuits.items())[:MOST_CIRCUITS]:
-        lines += hung("", wrapped(printable(tag), width - 2), 2, 0)
+        lines += para(printable(tag), width, 2)
         lines += rows([figure_row(move) for move in moves[:MOST_FIGURES]], width, 4)
         if len(moves) > MOST_FIGURES:
             lines.append(f"    and {counted(len(moves) - MOST_FIGURES, 'figure')} that moved less")
     if len(circuits) > MOST_CIRCUITS:
         rest = list(circuits)[MOST_CIRCUITS:]
-        lines += hung(
-            "", listed((f"moved less too: {printable(rest[0])}", *map(printable, rest[1:20])), width - 2), 2, 0
-        )
+        lines += hung("", listed((f"moved less too: {printable(rest[0])}", *map(printable, rest[1:20])), width - 2), 2, 0)
         lines += [f"  and {counted(len(rest) - 20, 'more circuit')}"] if len(rest) > 20 else []
     return lines

@@ -6,17 +6,18 @@ from collections.abc import Iterable, Sequence
 from html import escape
 
 from circuitlint.reports.comparison_words import (
+    ARROW,
     UNCHANGED,
     becoming,
     datum,
     figure_row,
     headline,
     lost,
-    margin_row,
+    margin_rows,
     name_of,
     numbers,
     severities,
-    side,
+    sides,
     told_apart,
 )
 from circuitlint.reports.terminal import printable, prose
@@ -32,11 +33,14 @@ h2 { font-size: 1.1rem; margin: 2rem 0 .4rem; border-bottom: 1px solid #1b2329; 
 dl { display: grid; grid-template-columns: max-content 1fr; gap: .1rem 1rem; margin: 0; } dd { margin: 0; }
 table { border-collapse: collapse; width: 100%; }
 th, td { text-align: left; vertical-align: top; padding: .25rem .8rem .25rem 0;
-  border-bottom: 1px solid #c9d1d6; } td.n { font-variant-numeric: tabular-nums; text-align: right; padding-right: 0; }
+  border-bottom: 1px solid #c9d1d6; }
+td.n { font-variant-numeric: tabular-nums; text-align: right; padding-right: 0; padding-left: .8rem;
+  overflow-wrap: normal; }
 .s { white-space: nowrap; font-weight: 600; } .m { color: #8c1d18; } .i { color: #6b4a00; } .o { color: #1d4f73; }
 p.held { font-weight: 600; border-left: .3rem solid #8c1d18; padding-left: .7rem; }
 footer { margin-top: 2.5rem; color: #46535c; }
-@media (max-width: 40rem) { .f thead { display: none; } .f tr, .f td { display: block; } .f td { border: 0; padding: 0; }
+@media (max-width: 40rem) { .f thead { display: none; } .f tr, .f td { display: block; }
+  .f td { border: 0; padding: 0; }
   .f tr { border-bottom: 1px solid #c9d1d6; padding: .4rem 0; } }
 @media print { body { margin: 0; max-width: none; font-size: 10pt; }
   tr { break-inside: avoid; } h2 { break-after: avoid; } }
@@ -51,7 +55,7 @@ def render(comparison: Comparison) -> str:
     told = headline(comparison) or UNCHANGED
     body = [
         f"<h1>{_text(title)}: what changed</h1>",
-        f"<dl><dt>before</dt><dd>{_text(side(comparison.before))}</dd><dt>after</dt><dd>{_text(side(comparison.after))}</dd></dl>",
+        f"<dl>{''.join(f'<dt>{label}</dt><dd>{_text(words)}</dd>' for label, words in sides(comparison).items())}</dl>",
         f'<p class="{"held" if comparison.new_held else "told"}">{_text(told)}</p>',
         _listing("Failed", (prose(f"{one.rule or one.plugin}: {one.what}") for one in comparison.problems)),
         _findings("New findings", comparison.new),
@@ -61,18 +65,12 @@ def render(comparison: Comparison) -> str:
         _listing(
             "Circuits",
             (
-                *(
-                    f"added: {printable(one.tag)} {prose(one.serves)}{', held' if one.held else ''}"
-                    for one in comparison.added
-                ),
+                *(f"added: {printable(one.tag)} {prose(one.serves)}{', held' if one.held else ''}" for one in comparison.added),
                 *(
                     f"removed: {printable(one.tag)} {prose(one.serves)}{', held' if one.held else ''}"
                     for one in comparison.removed
                 ),
-                *(
-                    f"now under another tag: {becoming(printable(one.was), printable(one.tag))}"
-                    for one in comparison.renamed
-                ),
+                *(f"now under another tag: {becoming(printable(one.was), printable(one.tag))}" for one in comparison.renamed),
             ),
         ),
         _listing("Data changed", map(datum, comparison.data)),
@@ -95,7 +93,7 @@ def render(comparison: Comparison) -> str:
             "Terms changed",
             (f"{prose(one.what)}: {becoming(prose(one.before), prose(one.after))}" for one in comparison.terms),
         ),
-        _table("Margins moved", ("Check", "Worst", "Margin"), map(margin_row, comparison.margins), numeric=(1, 2)),
+        _table("Margins moved", ("Check", "Worst", "Margin"), margin_rows(comparison.margins), numeric=(1, 2)),
         *_figures(comparison.figures),
     ]
     return (
@@ -116,20 +114,29 @@ def _listing(title: str, items: Iterable[str]) -> str:
     return f"<section><h2>{_text(title)}</h2>\n<ul>\n{lines}</ul></section>" if lines else ""
 
 
-def _table(
-    title: str, heads: Sequence[str], rows: Iterable[Sequence[str]], numeric: Sequence[int] = (), level: int = 2
-) -> str:
-    marks = [' class="n"' if index in numeric else "" for index in range(len(heads))]
-    body = "".join(
-        "<tr>" + "".join(f"<td{mark}>{_text(cell)}</td>" for cell, mark in zip(row, marks, strict=True)) + "</tr>\n"
+def _table(title: str, heads: Sequence[str], rows: Iterable[Sequence[str]], numeric: Sequence[int] = (), level: int = 2) -> str:
+    cells = "".join(
+        "<tr>"
+        + "".join(
+            f'<td class="n">{_unbroken(cell)}</td>' if index in numeric else f"<td>{_text(cell)}</td>"
+            for index, cell in enumerate(row)
+        )
+        + "</tr>\n"
         for row in rows
     )
-    if not body:
-        return ""
+    return _section(title, heads, cells, level) if cells else ""
+
+
+def _unbroken(cell: str) -> str:
+    """A cell of numbers, in which a line may break at an arrow only."""
+    return _text(cell).replace(" ", "\u00a0").replace(f"{ARROW}\u00a0", f"{ARROW} ")
+
+
+def _section(title: str, heads: Sequence[str], cells: str, level: int = 2, mark: str = "") -> str:
     head = "".join(f'<th scope="col">{_text(each)}</th>' for each in heads)
     return (
-        f"<section><h{level}>{_text(title)}</h{level}>\n<table><thead><tr>{head}</tr></thead>\n<tbody>\n{body}</tbody></table>"
-        "</section>"
+        f"<section><h{level}>{_text(title)}</h{level}>\n<table{mark}><thead><tr>{head}</tr></thead>\n"
+        f"<tbody>\n{cells}</tbody></table></section>"
     )
 
 
@@ -147,14 +154,8 @@ def _findings(title: str, changes: Sequence[FindingChange]) -> str:
             f'<tr><td class="s {_MARK.get(severity, "o")}">{_text(word)}</td><td>{tag}</td>'
             f"<td>{'<br>'.join(part for part in told if part)}</td></tr>\n"
         )
-    if not rows:
-        return ""
-    head = "".join(f'<th scope="col">{each}</th>' for each in ("Severity", "Circuit", "Finding"))
-    return (
-        f"<section><h2>{_text(title)}</h2>\n<table class="
-        f"><thead><tr>{head}</tr></thead>\n<tbody>\n{''.join(rows)}</tbody></table>"
-        "</section>"
-    )
+    heads = ("Severity", "Circuit", "Finding")
+    return _section(title, heads, "".join(rows), mark=' class="f"') if rows else ""
 
 
 def _figures(moves: Sequence[FigureMove]) -> Iterable[str]:

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections import Counter
+from collections.abc import Iterable
+
 from circuitlint.reports.terminal import printable, prose
 from circuitlint.reports.words import amount, bound, counted, percent, spoken
 from circuitlint.review.changes import (
@@ -42,6 +45,12 @@ def side(one: Side) -> str:
     against = f"{printable(one.ruleset)}, edition {printable(one.edition)}"
     held = "held" if one.held else "nothing held"
     return f"{files}{more}, against {against}; {counted(one.circuits, 'circuit')}, {held}"
+
+
+def sides(comparison: Comparison) -> dict[str, str]:
+    """The two reviews, each in a line by its label; in one line where they read alike."""
+    before, after = side(comparison.before), side(comparison.after)
+    return {"both": after} if before == after else {"before": before, "after": after}
 
 
 def headline(comparison: Comparison) -> str:
@@ -125,23 +134,25 @@ def _change(pair: list[str]) -> str:
     return f"{before} {ARROW} {after}" if before and after and before != after else after or before
 
 
-def margin_row(move: MarginMove) -> tuple[str, str, str]:
-    """What, worst end of the figure, margin; the limit too where it moved."""
+def margin_row(move: MarginMove, alike: bool = False) -> tuple[str, str, str]:
+    """What, worst end of the figure, margin; the limit too where it moved, or where another row is `alike` without it."""
     figure, limits, margins = _pairs(move)
-    limit = f", limit {_change(limits)}" if limits[0] != limits[1] else ""
+    limit = f", limit {_change(limits)}" if alike or limits[0] != limits[1] else ""
     crossed = f" ({move.crossed})" if move.crossed else ""
-    return f"{printable(move.tag)}  {name_of(move)}{limit}{crossed}", _change(figure), _change(margins) or "—"
+    return f"{printable(move.tag)}  {subject_of(move)}{limit}{crossed}", _change(figure), _change(margins) or "—"
+
+
+def margin_rows(moves: Iterable[MarginMove]) -> list[tuple[str, str, str]]:
+    """A row for each margin; those that would read alike name their limits."""
+    told = list(moves)
+    names = Counter(margin_row(move)[0] for move in told)
+    return [margin_row(move, names[margin_row(move)[0]] > 1) for move in told]
 
 
 def figure_row(move: FigureMove) -> tuple[str, str, str]:
     """What, the nominal value, or the end that moved where the nominal one did not, and by how much."""
-    pairs = [
-        [amount(value, move.dimension, move.name) for value in pair]
-        for pair in zip(move.before, move.after, strict=True)
-    ]
-    moves = [
-        0.0 if before == after else abs(after - before) for before, after in zip(move.before, move.after, strict=True)
-    ]
+    pairs = [[amount(value, move.dimension, move.name) for value in pair] for pair in zip(move.before, move.after, strict=True)]
+    moves = [0.0 if before == after else abs(after - before) for before, after in zip(move.before, move.after, strict=True)]
     index = 1 if pairs[1][0] != pairs[1][1] else moves.index(max(moves))
     end = ("lowest ", "", "highest ")[index]
     of = f" of {printable(move.of)}" if move.of else ""

@@ -12,6 +12,7 @@ from circuitlint.reports.terminal import (
     equation,
     hung,
     left,
+    para,
     printable,
     prose,
     right,
@@ -95,39 +96,50 @@ def table_for(checks: Sequence[Check], width: int) -> Table:
 
 def _cells(check: Check) -> tuple[str, ...]:
     values = [
-        amount(value, check.dimension, check.figure) if value is not None else "—"
-        for value in (check.nominal, check.worst)
+        amount(value, check.dimension, check.figure) if value is not None else "—" for value in (check.nominal, check.worst)
     ]
     return *values, limit_of(check), percent(check.margin)
 
 
-def result_of(circuit: Circuit) -> str:
-    """The circuit's result in a word or two."""
-    return "held" if circuit.held else "not solved" if circuit.not_solved else "clear"
+def result_of(record: Record, circuit: Circuit) -> str:
+    """The circuit's result in a word or two. Only a circuit that could have been held is called clear."""
+    if circuit.held:
+        return "held"
+    if circuit.not_solved:
+        return "not solved"
+    if all(check.result == "not assessed" for check in circuit.checks):
+        return "not assessed"
+    unheld = record.hold_at == "never" and any(check.result == "nonconforming" for check in circuit.checks)
+    return "not held" if unheld else "clear"
 
 
 def block(record: Record, circuit: Circuit, checks: Sequence[Check], table: Table, paint: Paint) -> Iterator[str]:
     """The lines of one circuit: heading, then its findings."""
-    result = result_of(circuit)
+    result = result_of(record, circuit)
     room = table.width - len(result) - 2
     tag = clipped(printable(circuit.tag), room)
     serves = clipped(prose(circuit.serves), max(0, room - columns(tag) - 2))
     title = f"{tag}  {serves}" if columns(serves) > 1 else tag
     yield f"{paint.word(result)}  {paint.strong(title)}"
     if circuit.not_solved:
-        yield from hung("", wrapped(prose(circuit.not_solved), table.width - DETAIL), DETAIL, 0)
+        yield from para(prose(circuit.not_solved), table.width, DETAIL)
     if any(check.limit is not None for check in checks) and not table.tight:
         yield paint.faint(" " * (table.severity + 4 + table.name) + _row(_HEADINGS, table))
+    told = ""
     for check in checks:
-        yield from finding(record, check, table, paint)
+        yield from finding(record, check, table, paint, told)
+        told = check.help
 
 
 def _row(cells: Sequence[str], table: Table) -> str:
     return "".join("  " + right(cell, width) for cell, width in zip(cells, table.cells, strict=True))
 
 
-def finding(record: Record, check: Check, table: Table, paint: Paint) -> Iterator[str]:
-    """The lines of one finding: rule and figures, how it stands, why, what would help, where."""
+def finding(record: Record, check: Check, table: Table, paint: Paint, help_above: str = "") -> Iterator[str]:
+    """The lines of one finding: rule and figures, how it stands, why, what would help, where.
+
+    `help_above` is what the finding above it said would help; the same words are not printed twice in a row.
+    """
     severity = check.severity or ""
     head = f"  {paint.word(severity, left(severity, table.severity))}  "
     room = table.width - table.severity - 4
@@ -142,7 +154,7 @@ def finding(record: Record, check: Check, table: Table, paint: Paint) -> Iterato
         if table.tight:
             yield head + clipped(words, room)
             told_row = ", ".join(f"{name} {cell}" for name, cell in zip(_HEADINGS, _cells(check), strict=True))
-            yield from hung("", wrapped(told_row, table.width - DETAIL), DETAIL, 0)
+            yield from para(told_row, table.width, DETAIL)
         elif columns(words) <= table.name:
             yield head + left(words, table.name) + row
         else:
@@ -152,8 +164,8 @@ def finding(record: Record, check: Check, table: Table, paint: Paint) -> Iterato
         if told and told not in words:
             sentence = f"{told}: {sentence}"
     width = table.width - DETAIL
-    yield from hung("", wrapped(sentence, width), DETAIL, 0)
-    for label, lines in _reasons(record, check, width - _LABEL):
+    yield from para(sentence, table.width, DETAIL)
+    for label, lines in _reasons(record, check, width - _LABEL, help_above):
         yield from hung(label, lines, DETAIL, _LABEL)
     where = f"{place_of(check.place)}  {printable(check.place.path)}".rstrip()
     for line in hung("where", wrapped(where, width - _LABEL), DETAIL, _LABEL):
@@ -177,11 +189,11 @@ def share_of_box(check: Check) -> str:
     return f"{share:.1f} ± {100.0 * check.share_beyond_uncertainty:.1f} %"
 
 
-def _reasons(record: Record, check: Check, width: int) -> Iterator[tuple[str, list[str]]]:
+def _reasons(record: Record, check: Check, width: int, help_above: str) -> Iterator[tuple[str, list[str]]]:
     if check.why:
         yield "why", equation(prose(check.why), width)
     if check.help:
-        yield "help", wrapped(prose(check.help), width)
+        yield "help", ["as above"] if check.help == help_above else wrapped(prose(check.help), width)
     if check.concession is not None and check.concession < len(record.concessions):
         yield "leave", wrapped(leave(record.concessions[check.concession]), width)
 

@@ -8,6 +8,8 @@ from __future__ import annotations
 
 import hashlib
 
+from circuitlint.errors import RecordError
+from circuitlint.reports import json_record
 from circuitlint.reports.page.circuit import circuits
 from circuitlint.reports.page.closing import equations, not_assessed, signatures
 from circuitlint.reports.page.findings import findings, margins_chart
@@ -19,8 +21,15 @@ from circuitlint.review.record import Record
 
 
 def digest_of(record: Record) -> str:
-    """SHA-256 of the record in hexadecimal, over its JSON without white space in the order of its fields."""
-    return hashlib.sha256(record.model_dump_json().encode()).hexdigest()
+    """SHA-256 of the record in hexadecimal: that of the file the report kind `json` writes.
+
+    A record that JSON cannot hold, since a number in it is not finite, is told by its text as a model instead.
+    """
+    try:
+        text = json_record.render(record)
+    except RecordError:
+        text = repr(record)
+    return hashlib.sha256(text.encode()).hexdigest()
 
 
 def render(record: Record, reference: Reference = "current") -> str:

@@ -41,7 +41,7 @@ def render(record: Record) -> str:
     if astray is not None:
         raise RecordError(f"the record cannot be written as JSON: {astray} is not a finite number")
     entries = (f"{_compact(name)}:{_entry(getattr(record, name))}" for name in type(record).model_fields)
-    return unseen_escaped("{" + ",\n".join(entries) + "}\n")
+    return "{" + ",\n".join(entries) + "}\n"
 
 
 def unseen_escaped(text: str) -> str:
@@ -58,7 +58,8 @@ def _entry(value: Any) -> str:
 
 
 def _compact(value: Any) -> str:
-    return to_json(value).decode("utf-8")
+    made = to_json(value).decode("utf-8")
+    return made if made.isprintable() else unseen_escaped(made)
 
 
 def load(text: str | bytes) -> Record:

@@ -11,19 +11,18 @@ from __future__ import annotations
 import hashlib
 import json
 import re
-from collections.abc import Iterator, Sequence
+from collections.abc import Sequence
 from typing import Any
-from urllib.parse import quote
 
 from circuitlint.errors import RecordError
 from circuitlint.reports.json_record import unseen_escaped
+from circuitlint.reports.sarif_notices import invocation
+from circuitlint.reports.sarif_parts import LEVELS, location, message, told, unit, uri
 from circuitlint.reports.terminal import printable, prose
-from circuitlint.reports.words import amount, citation, limit_of, percent, subject
-from circuitlint.review.record import Check, Circuit, ConcessionRecord, Place, Record, RuleRecord, Severity
-from circuitlint.si import DIMENSIONS
+from circuitlint.reports.words import amount, citation, limit_of, subject
+from circuitlint.review.record import Check, Circuit, ConcessionRecord, Record, RuleRecord
 
 SCHEMA = "https://docs.oasis-open.org/sarif/sarif/v2.1.0/errata01/os/schemas/sarif-schema-2.1.0.json"
-LEVELS: dict[Severity, str] = {"major": "error", "minor": "warning", "observation": "note"}
 FINGERPRINT = "circuitCheck/v1"
 _ROLES = {"definition": "analysisTarget", "ruleset": "userSpecifiedConfiguration"}
 
@@ -47,7 +46,7 @@ def _run(record: Record) -> dict[str, Any]:
         "tool": {"driver": _driver(record)},
         # Columns are counted as the definition's reader counts them (3.14.27).
         "columnKind": "unicodeCodePoints",
-        "invocations": [_invocation(record, rules, files)],
+        "invocations": [invocation(record, rules, files)],
         "artifacts": [
             {
                 "location": {"uri": uri(one.file)},
@@ -101,9 +100,9 @@ def _rule(record: Record, rule: RuleRecord) -> dict[str, Any]:
     prefix = f"rules.{rule.name}."
     return {
         "id": rule.name,
-        "shortDescription": _message(rule.title),
-        "fullDescription": _message(rule.purpose),
-        "help": _message(" ".join(help_text)),
+        "shortDescription": message(rule.title),
+        "fullDescription": message(rule.purpose),
+        "help": message(" ".join(help_text)),
         "defaultConfiguration": {"level": LEVELS[usual]},
         "properties": {
             "plugin": rule.plugin,
@@ -112,7 +111,7 @@ def _rule(record: Record, rule: RuleRecord) -> dict[str, Any]:
             "limits": {
                 limit.name: {
                     "value": limit.value,
-                    **_unit(limit.dimension),
+                    **unit(limit.dimension),
                     "setBy": limit.set_by,
                     "source": _cited(record, limit.source),
                 }
@@ -128,9 +127,7 @@ def _cited(record: Record, key: str) -> str:
     return citation(source) if source is not None else printable(key)
 
 
-def _result(
-    record: Record, circuit: Circuit, check: Check, rules: dict[str, int], files: dict[str, int]
-) -> dict[str, Any]:
+def _result(record: Record, circuit: Circuit, check: Check, rules: dict[str, int], files: dict[str, int]) -> dict[str, Any]:
     open_question = check.result == "not assessed"
     level = LEVELS[check.severity] if check.severity is not None else "note"
     result: dict[str, Any] = {
@@ -138,8 +135,8 @@ def _result(
         "kind": "open" if open_question else "fail",
         # Any kind but `fail` has the level `none` (3.27.10).
         "level": "none" if open_question else level,
-        "message": _message(_told(circuit, check)),
-        "locations": [_location(check.place, files, circuit.tag, check.of)],
+        "message": message(told(circuit, check)),
+        "locations": [location(check.place, files, circuit.tag, check.of)],
         "partialFingerprints": {FINGERPRINT: fingerprint(circuit.tag, check)},
         # Either every result of a run has the property or none has (3.27.23).
         "suppressions": _suppressions(record.concessions, check),
@@ -155,18 +152,6 @@ def fingerprint(tag: str, check: Check) -> str:
     limit = check.limit.name if check.limit is not None else ""
     named = json.dumps([check.rule, tag, check.of, check.state, check.figure, limit, check.id])
     return hashlib.sha256(named.encode("utf-8", "surrogatepass")).hexdigest()
-
-
-def _told(circuit: Circuit, check: Check) -> str:
-    serves = f" ({circuit.serves})" if circuit.serves else ""
-    sentences = [f"{circuit.tag}{serves}: {check.what}"]
-    if check.margin is not None:
-        sentences.append(f"margin {percent(check.margin)} in the worst case")
-    if check.result == "not assessed" and check.why:
-        sentences.append(check.why)
-    if check.help:
-        sentences.append(f"what would help: {check.help}")
-    return "; ".join(sentences)
 
 
 def _suppressions(concessions: Sequence[ConcessionRecord], check: Check) -> list[dict[str, Any]]:
@@ -202,7 +187,7 @@ def _figures(circuit: Circuit, check: Check) -> dict[str, Any]:
         if number is not None:
             properties[name] = number
     if check.nominal is not None:
-        properties |= _unit(check.dimension)
+        properties |= unit(check.dimension)
     if check.limit is not None:
         properties |= {
             "limit": check.limit.value,
@@ -216,97 +201,5 @@ def _figures(circuit: Circuit, check: Check) -> dict[str, Any]:
 
 
 def _shown(check: Check) -> str:
-    values = [
-        amount(value, check.dimension, check.figure) for value in (check.nominal, check.worst) if value is not None
-    ]
+    values = [amount(value, check.dimension, check.figure) for value in (check.nominal, check.worst) if value is not None]
     return f"{subject(check)}: {' to '.join(values)}, limit {limit_of(check)}"
-
-
-def _unit(dimension: str) -> dict[str, str]:
-    known = DIMENSIONS.get(dimension)
-    return {"unit": known.symbol or "1"} if known is not None else {}
-
-
-def _location(place: Place, files: dict[str, int], tag: str = "", of: str = "") -> dict[str, Any]:
-    artifact: dict[str, Any] = {"uri": uri(place.file)}
-    if place.file in files:
-        artifact["index"] = files[place.file]
-    region = {"startLine": max(1, place.line), "startColumn": max(1, place.column)}
-    location: dict[str, Any] = {"physicalLocation": {"artifactLocation": artifact, "region": region}}
-    if tag:
-        path = f"{tag}/{of}" if of else tag
-        location["logicalLocations"] = [
-            {"name": printable(tag), "fullyQualifiedName": printable(path), "kind": "object"}
-        ]
-    return location
-
-
-def uri(file: str) -> str:
-    """A file name as a URI reference: relative names stay relative, absolute ones get their scheme."""
-    name = file.replace("\\", "/")
-    quoted = quote(name, safe="/", errors="surrogatepass")
-    if name.startswith("/"):
-        return f"file://{quoted}" if not name.startswith("//") else f"file:{quoted}"
-    if re.match(r"[A-Za-z]:/", name):
-        return f"file:///{quoted}"
-    return quoted or "."
-
-
-def _invocation(record: Record, rules: dict[str, int], files: dict[str, int]) -> dict[str, Any]:
-    failed = [plugin for plugin in record.plugins if plugin.failed]
-    return {
-        "executionSuccessful": not record.problems and not failed,
-        "toolExecutionNotifications": [*_failures(record, rules), *_gaps(record, rules, files)],
-        "toolConfigurationNotifications": [
-            {
-                "level": "warning",
-                "message": _message(f"concession for {one.tag}, {one.rule}: {one.state}"),
-                "locations": [_location(one.place, files)],
-                **_about(one.rule, rules),
-            }
-            for one in record.concessions
-            if one.state != "in force"
-        ],
-    }
-
-
-def _failures(record: Record, rules: dict[str, int]) -> Iterator[dict[str, Any]]:
-    """Rules and plugins that failed."""
-    for problem in record.problems:
-        who = f"rule {problem.rule} of plugin {problem.plugin}" if problem.rule else f"plugin {problem.plugin}"
-        lost = f"; not assessed: {', '.join(problem.circuits)}" if problem.circuits else ""
-        yield {"level": "error", "message": _message(f"{who}: {problem.what}{lost}"), **_about(problem.rule, rules)}
-    told = {problem.plugin for problem in record.problems}
-    for plugin in record.plugins:
-        if plugin.failed and plugin.name not in told:
-            yield {"level": "error", "message": _message(f"plugin {plugin.name}: {plugin.failed}")}
-
-
-def _gaps(record: Record, rules: dict[str, int], files: dict[str, int]) -> Iterator[dict[str, Any]]:
-    """What could not be assessed, and circuits that could not be solved."""
-    for circuit in record.circuits:
-        if circuit.not_solved:
-            yield {
-                "level": "error",
-                "message": _message(f"{circuit.tag}: not solved: {circuit.not_solved}"),
-                "locations": [_location(circuit.place, files, circuit.tag)],
-            }
-        for check in circuit.checks:
-            if check.result == "not assessed":
-                level = LEVELS[check.severity] if check.severity is not None else "note"
-                yield {
-                    "level": level,
-                    "message": _message(_told(circuit, check)),
-                    "locations": [_location(check.place, files, circuit.tag, check.of)],
-                    **_about(check.rule, rules),
-                }
-
-
-def _about(rule: str, rules: dict[str, int]) -> dict[str, Any]:
-    return {"associatedRule": {"id": rule, "index": rules[rule]}} if rule in rules else {}
-
-
-def _message(text: str) -> dict[str, str]:
-    """Plain text as a message: braces doubled (3.11.5), and nothing that a reader would take for a link (3.11.6)."""
-    plain = prose(text).replace("{", "{{").replace("}", "}}").replace("](", "] (")
-    return {"text": plain or "no text"}

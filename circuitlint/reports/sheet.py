@@ -5,9 +5,21 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping, Sequence
 from itertools import groupby
 
-from circuitlint.reports.terminal import NARROW, WIDE, clipped, columns, equation, hung, left, printable, prose, wrapped
+from circuitlint.reports.terminal import (
+    NARROW,
+    WIDE,
+    clipped,
+    columns,
+    equation,
+    hung,
+    left,
+    para,
+    printable,
+    prose,
+    wrapped,
+)
 from circuitlint.reports.words import amount, citation, counted, number_of, numbers_in, place_of, spoken, symbolic
-from circuitlint.review.record import Circuit, Figure, Record
+from circuitlint.review.record import Circuit, Figure, Input, Record
 
 NAME = 26
 """Room for a figure's name before its equation."""
@@ -46,7 +58,7 @@ def _circuit(record: Record, circuit: Circuit, numbers: dict[str, int], width: i
     for state, of_state in _grouped(circuit.figures, "state").items():
         yield from ("", clipped(printable(state).upper() if state.isascii() else printable(state), width))
         for of, figures in _grouped(of_state, "of").items():
-            yield from ("", *hung("", wrapped(printable(of) or "circuit", width - 2), 2, 0))
+            yield from ("", *para(printable(of) or "circuit", width, 2))
             for figure in figures:
                 yield from _figure(record, figure, numbers, width)
     if not circuit.figures and not circuit.not_solved:
@@ -82,23 +94,31 @@ def _figure(record: Record, figure: Figure, numbers: dict[str, int], width: int)
     yield from hung(name, steps, indent, NAME)
 
 
+def _own(text: str, of: str) -> str:
+    """A figure or datum as it is called beside the part it belongs to: `its inductance`."""
+    if of and text.startswith(f"{of}."):
+        return prose(f"its {text.removeprefix(f'{of}.')}")
+    return prose(text.removesuffix(f" of {of}") if of else text)
+
+
 def _where(figure: Figure) -> str:
-    """What each symbol stands for, with its number: `R is resistance of load.coil`."""
-    told = {one.symbol: f"{printable(one.symbol)}: {prose(one.what)}" for one in figure.inputs if one.what}
-    several: dict[str, list[str]] = {}
+    """What each symbol stands for, with its numbers where it takes several: `with R: its resistance`."""
+    several: dict[str, list[Input]] = {}
     for one in figure.inputs:
-        several.setdefault(one.symbol, []).append(f"{prose(one.what)} {number_of(one)}")
-    shown = [
-        told[symbol] if len(each) == 1 else f"{printable(symbol)}: {' and '.join(each)}"
-        for symbol, each in several.items()
-        if symbol in told
-    ]
+        if one.what:
+            several.setdefault(one.symbol, []).append(one)
+    shown = []
+    for symbol, inputs in several.items():
+        told = [_own(one.what, figure.of) for one in inputs]
+        if len(inputs) > 1:
+            told = [f"{what} {number_of(one)}" for what, one in zip(told, inputs, strict=True)]
+        shown.append(f"{printable(symbol)}: {' and '.join(told)}")
     return f"with {'; '.join(shown)}" if shown else ""
 
 
 def _range(figure: Figure) -> str:
     low, high = (amount(value, figure.dimension, figure.name) for value in (figure.lowest, figure.highest))
-    moved = f", moved most by {printable(figure.moved_by)}" if figure.moved_by else ""
+    moved = f", moved most by {_own(figure.moved_by, figure.of)}" if figure.moved_by else ""
     return f"from {low} to {high}{moved}"
 
 
@@ -112,5 +132,5 @@ def _formulas(record: Record, numbers: Mapping[str, int], width: int) -> Iterato
         steps = equation(symbolic(formula), width - field - 2)
         steps += wrapped(citation(source) if source is not None else prose(formula.source), width - field - 2)
         if formula.validity:
-            steps += wrapped(f"holds for {prose(formula.validity)}", width - field - 2)
+            steps += wrapped(f"validity: {prose(formula.validity)}", width - field - 2)
         yield from hung(f"[{number}]", steps, 2, field)

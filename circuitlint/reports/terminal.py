@@ -106,9 +106,14 @@ def wrapped(text: str, width: int) -> list[str]:
 
 
 def equation(text: str, width: int) -> list[str]:
-    """A chain of equalities over lines that break before an equals sign where they can."""
+    """A chain of equalities over lines that break before an equals sign where they can.
+
+    Where a clause defines a symbol, an equals sign need not be one of the chain, and the lines are simply filled.
+    """
     if columns(text) <= width:
         return [text]
+    if any(word in text for word in (" with ", " from ", " where ")):
+        return wrapped(text.replace(" = ", f" ={_TIED}"), width)
     first, *rest = text.split(" = ")
     steps = [first, *(f"= {step}" for step in rest)]
     lines: list[str] = []
@@ -126,9 +131,18 @@ def hung(label: str, lines: Sequence[str], indent: int, field: int) -> list[str]
     return [f"{margin}{left(label if not number else '', field)}{line}" for number, line in enumerate(lines)]
 
 
+def para(text: str, width: int, indent: int) -> list[str]:
+    """A paragraph whose later lines stand two columns further in, so that none can pass for a line of its own."""
+    first, *rest = wrapped(text, width - indent)
+    if rest:
+        first, *rest = wrapped(text, width - indent - 2)
+    return [" " * indent + first, *(" " * (indent + 2) + line for line in rest)]
+
+
 def listed(items: Iterable[str], width: int) -> list[str]:
-    """Items with commas between, broken over lines between items only."""
+    """Items with commas between, broken over lines between items where they fit on one."""
     lines: list[str] = []
+    width -= 1  # room for the comma at the end of a line
     for item in items:
         if columns(item) > width:
             lines += wrapped((f"{lines.pop()}, " if lines else "") + item, width)
@@ -156,7 +170,7 @@ def rows(table: Sequence[Sequence[str]], width: int, indent: int) -> list[str]:
         if columns(first) <= name:
             lines.append(f"{' ' * indent}{left(first, name)}{numbers}".rstrip())
         else:
-            lines += hung("", wrapped(first, width - indent), indent, 0)
+            lines += para(first, width, indent)
             lines.append(" " * (indent + max(0, name)) + numbers)
     return lines
 

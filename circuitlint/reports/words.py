@@ -59,7 +59,7 @@ def percent(share: float | None) -> str:
 
 def spoken(name: str) -> str:
     """A name of the record as running text: `power-factor` to `power factor`."""
-    return printable(name).replace("-", " ").replace("_", " ")
+    return printable(name).replace("_", " ").replace("-", " ").replace("switch on", "switch-on")
 
 
 def place_of(place: Place) -> str:
@@ -81,17 +81,18 @@ def subject(check: Check) -> str:
 
 
 def standing(check: Check) -> str:
-    """How a check stands, in words: `below the limit at nominal values`."""
+    """How a check stands, in words: `below the limit (circuit) at nominal values`."""
     side = "below" if check.sense == "at least" else "above"
+    limit = f"the limit ({spoken(check.limit.name)})" if check.limit is not None else "the limit"
     if check.result == "not assessed":
         return "could not be assessed"
     if check.basis == "nominal":
-        return f"{side} the limit at nominal values"
+        return f"{side} {limit} at nominal values"
     if check.basis == "worst case":
-        return f"{side} the limit in the worst case"
+        return f"{side} {limit} in the worst case"
     if check.basis == "near the limit":
-        return "within the limit, close to it in the worst case"
-    return "nonconforming" if check.result == "nonconforming" else "within the limit"
+        return f"within {limit}, close to it in the worst case"
+    return "nonconforming" if check.result == "nonconforming" else f"within {limit}"
 
 
 def limit_of(check: Check) -> str:

@@ -18,7 +18,8 @@ def imbalance(values: Mapping[Key, Any], tree: Node, places: Sequence[str], phas
     """The largest relative imbalance of any node, per case; zero where there is nothing to compare.
 
     Compared are: source power against the sum over cables and leaves, source voltage against the sum of voltages along the
-    way (`places` are its cables and feeders), and at each `series` or `parallel` its own voltage or current against the sum over its parts.
+    way (`places` are its cables and feeders), and at each `series` or `parallel` its own voltage or current against the sum
+    over its parts.
     """
     worst: Any = 0.0
     leaves = list(_leaves(tree))

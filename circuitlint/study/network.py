@@ -9,6 +9,7 @@ from circuitlint.errors import OutOfTable
 from circuitlint.physics import conductor_heating, conductors, feeding, phasors, power_factor, steps, switching_on
 from circuitlint.sources import Source
 from circuitlint.study.data import DataSheet, Datum
+from circuitlint.study.extras import write_extras
 from circuitlint.study.feeding import Feed
 from circuitlint.study.plan import Kinds, Node, Plan, impedance_of, share_out, write_power_figures
 from circuitlint.study.states import State
@@ -240,6 +241,7 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, way: tu
     share_out(plan, tree, kinds, terminal, entry)
     if state.name == "switch-on":
         _switch_on(plan, tree, kinds)
+    write_extras(plan, kinds)
     return plan.sheet.finish()
 
 

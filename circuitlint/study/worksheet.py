@@ -73,6 +73,8 @@ class Worksheet:
     before: list[Line] = field(default_factory=list)
     sweep: list[Line] = field(default_factory=list)
     rest: list[Line] = field(default_factory=list)
+    apart: set[Key] = field(default_factory=set)
+    """Figures nothing else rests on: where one is not a finite number, it alone is lacking."""
 
     def datum(self, path: str) -> Key:
         """The key of a stated datum."""
@@ -172,7 +174,7 @@ class Worksheet:
                 break
         kept = [line for line in self.lines if line.key in needed]
         feedback = [one for one in self.feedback if one.guess in needed]
-        return Worksheet(kept, feedback, self.lacks, self.index, self.data, self.assumed).finish()
+        return Worksheet(kept, feedback, self.lacks, self.index, self.data, self.assumed, apart=self.apart).finish()
 
     def run(self, data: Mapping[Key, Any]) -> dict[Key, Any]:
         """Evaluate every line. `data` maps data keys to floats or arrays that broadcast together.

@@ -5,7 +5,6 @@ from __future__ import annotations
 from circuitlint.sources import Source
 from circuitlint.tables.files import data, pick, place_of, source
 
-
 METALS = ("copper", "aluminium", "lead", "steel")
 
 

@@ -31,7 +31,8 @@ FIGURES = st.builds(
 )  # fmt: skip
 CHECKS = st.builds(
     r.Check, id=TEXTS, rule=st.sampled_from(sorted(RULES)), state=TEXTS, figure=TEXTS, of=TEXTS,
-    sense=st.sampled_from(("at least", "at most", "")), dimension=st.one_of(st.just(""), NAMES), nominal=SOME, worst=SOME,
+    sense=st.sampled_from(("at least", "at most", "")), dimension=st.one_of(st.just(""), NAMES),
+    nominal=SOME, worst=SOME,
     limit=st.one_of(st.none(), st.sampled_from(tuple(LIMITS.values()))),
     result=st.sampled_from(("conforms", "nonconforming", "not assessed")),
     basis=st.sampled_from((None, "nominal", "worst case", "near the limit", "matter of kind", "missing data")),
@@ -43,11 +44,10 @@ PHASORS = st.builds(r.Phasor, name=st.sampled_from(("voltage", "current", "power
                     real=NUMBERS, imaginary=NUMBERS)  # fmt: skip
 CURVES = st.builds(r.Curve, name=TEXTS, of=TEXTS, state=TEXTS, dimension=NAMES, times=several(NUMBERS),
                    values=several(NUMBERS), note=TEXTS)  # fmt: skip
-REGIONS = st.builds(
-    r.Region, of=TEXTS, state=TEXTS, across=TEXTS, up=TEXTS, points=several(st.tuples(NUMBERS, NUMBERS))
-)
+REGIONS = st.builds(r.Region, of=TEXTS, state=TEXTS, across=TEXTS, up=TEXTS, points=several(st.tuples(NUMBERS, NUMBERS)))
 CIRCUITS = st.builds(
-    circuit, TEXTS, TEXTS, several(CHECKS, 4), figures=several(FIGURES), phasors=several(PHASORS), curves=several(CURVES),
+    circuit, TEXTS, TEXTS, several(CHECKS, 4),
+    figures=several(FIGURES), phasors=several(PHASORS), curves=several(CURVES),
     regions=several(REGIONS), not_solved=TEXTS, held=st.booleans(), fed_from=TEXTS, place=PLACES,
 )  # fmt: skip
 CONCESSIONS = st.builds(
@@ -57,7 +57,7 @@ CONCESSIONS = st.builds(
 
 
 def steers(character: str) -> bool:
-    """Whether a character, other than a line's end, steers a terminal or a reader: controls, format marks, separators."""
+    """Whether a character other than a line's end steers a terminal or a reader."""
     return character != "\n" and unicodedata.category(character) in ("Cc", "Cf", "Zl", "Zp")
 
 
@@ -66,7 +66,8 @@ def records(draw: st.DrawFn, most: int = 3) -> r.Record:
     """A record of up to so many circuits."""
     return record(
         draw(several(CIRCUITS, most)),
-        title=draw(TEXTS), statement=draw(TEXTS), held=draw(st.booleans()), hold_at=draw(st.sampled_from((*r.SEVERITIES, "never"))),
+        title=draw(TEXTS), statement=draw(TEXTS), held=draw(st.booleans()),
+        hold_at=draw(st.sampled_from((*r.SEVERITIES, "never"))),
         concessions=(draw(CONCESSIONS), *draw(several(CONCESSIONS, 2))),
         problems=draw(several(st.builds(r.Problem, plugin=TEXTS, rule=TEXTS, what=TEXTS, circuits=several(TEXTS)))),
         cautions={**CAUTIONS, draw(TEXTS): draw(TEXTS)}, sources=SOURCES, formulas=FORMULAS,

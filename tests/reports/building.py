@@ -114,9 +114,7 @@ def check(
     sense = "at least" if limit == "circuit" else "at most"
     sign = 1.0 if sense == "at least" else -1.0
     margin, nominal_margin = sign * (worst - to.value) / to.value, sign * (nominal - to.value) / to.value
-    basis = (
-        "nominal" if nominal_margin < 0 else "worst case" if margin < 0 else "near the limit" if margin < 0.05 else None
-    )
+    basis = "nominal" if nominal_margin < 0 else "worst case" if margin < 0 else "near the limit" if margin < 0.05 else None
     severity = {"nominal": "major", "worst case": "minor", "near the limit": "observation"}.get(basis or "")
     return r.Check.model_validate(
         {
@@ -147,9 +145,7 @@ def check(
     )
 
 
-def unknown(
-    tag: str, rule: str, needs: tuple[str, ...], line: int, severity: str = "observation", why: str = ""
-) -> r.Check:
+def unknown(tag: str, rule: str, needs: tuple[str, ...], line: int, severity: str = "observation", why: str = "") -> r.Check:
     """A check that cannot be made."""
     return r.Check.model_validate(
         {
@@ -240,17 +236,13 @@ def figures(scale: float = 1.0) -> tuple[r.Figure, ...]:
             state="switch-on",
             inputs=(
                 put(symbol="Z", value=1.21, angle=0.0, dimension="resistance", what="impedance of cable[0]"),
-                put(
-                    symbol="Z", value=115.03 * scale, angle=1.387, dimension="resistance", what="impedance of load.coil"
-                ),
+                put(symbol="Z", value=115.03 * scale, angle=1.387, dimension="resistance", what="impedance of load.coil"),
             ),
         ),
     )
 
 
-def circuit(
-    tag: str, serves: str, checks: tuple[r.Check, ...], line: int = 20, scale: float = 1.0, **more: Any
-) -> r.Circuit:
+def circuit(tag: str, serves: str, checks: tuple[r.Check, ...], line: int = 20, scale: float = 1.0, **more: Any) -> r.Circuit:
     """A circuit with its checks; held by a major finding that no concession covers."""
     coverage: dict[str, str] = dict.fromkeys(RULES, "not applicable")
     for one in sorted(checks, key=lambda one: ("conforms", "not assessed", "nonconforming").index(one.result)):
@@ -269,14 +261,10 @@ def circuit(
                 values=("230 V +10/-6 %", "50 Hz ± 1 %"),
                 parts=(
                     r.Element(of="cable[0]", kind="cable", values=("1.5 mm2, 42 m",)),
-                    r.Element(
-                        of="load.coil", kind="coil", label="brake magnet", values=("21 ohm ± 5 %", "0.36 H ± 10 %")
-                    ),
+                    r.Element(of="load.coil", kind="coil", label="brake magnet", values=("21 ohm ± 5 %", "0.36 H ± 10 %")),
                 ),
             ),
-            "cases": r.Cases(
-                count=64, inputs=("supply.voltage", "load.coil.inductance"), method="corners and interior points"
-            ),
+            "cases": r.Cases(count=64, inputs=("supply.voltage", "load.coil.inductance"), method="corners and interior points"),
             "figures": figures(scale),
             "checks": checks,
             "coverage": coverage,
@@ -317,9 +305,7 @@ def record(circuits: tuple[r.Circuit, ...], **more: Any) -> r.Record:
         if one.severity is not None
     ]
     checks = [one for each in circuits for one in each.checks]
-    counts = {
-        result: sum(one.result == result for one in checks) for result in ("conforms", "nonconforming", "not assessed")
-    }
+    counts = {result: sum(one.result == result for one in checks) for result in ("conforms", "nonconforming", "not assessed")}
     counts |= {
         "circuits held": sum(each.held for each in circuits),
         "circuits clear": sum(not each.held for each in circuits),
@@ -335,9 +321,7 @@ def record(circuits: tuple[r.Circuit, ...], **more: Any) -> r.Record:
                 r.Document(file="slip-3.yaml", sha256="3f" * 32, kind="definition"),
                 r.Document(file="low-voltage-50hz.yaml", sha256="a7" * 32, kind="ruleset"),
             ),
-            "plugins": (
-                r.PluginRecord(name="circuitlint_rules", version="0.1.0", origin="installed", offers=tuple(RULES)),
-            ),
+            "plugins": (r.PluginRecord(name="circuitlint_rules", version="0.1.0", origin="installed", offers=tuple(RULES)),),
             "rules": tuple(
                 r.RuleRecord(
                     name=name,

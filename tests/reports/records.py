@@ -169,9 +169,7 @@ def hostile() -> r.Record:
         statement=bad,
         cautions={"isolate": bad},
         problems=(r.Problem(plugin=bad, rule=bad, what=bad, circuits=(bad,)),),
-        concessions=(
-            r.ConcessionRecord(tag=bad, rule=bad, by=bad, reason=bad, until=bad, state="in force", place=place(1)),
-        ),
+        concessions=(r.ConcessionRecord(tag=bad, rule=bad, by=bad, reason=bad, until=bad, state="in force", place=place(1)),),
         plugins=(r.PluginRecord(name=bad, version=bad, origin=bad, offers=(bad,), failed=bad),),
         ruleset=RULESET.model_copy(update={"name": bad, "edition": bad, "built_on": (bad,), "title": bad}),
     )

@@ -22,9 +22,9 @@ def test_a_figure_shows_equation_numbers_result_range_and_source() -> None:
     text = flowing(SHEET)
     # 21 Ω and 113.1 Ω at right angles: sqrt(441 + 12791.61) = 115.03 by the theorem of Pythagoras, four digits printed.
     assert "Z = √(R² + X²) [1] = √((21.00 Ω)² + (113.1 Ω)²) = 115.0 Ω" in text
-    assert "from 103.5 Ω to 126.5 Ω, moved most by load.coil.inductance" in text
-    assert "with R: load.coil.resistance; X: reactance of load.coil" in text
-    assert "[1] Z = √(R² + X²) Ohm's law for rms magnitudes (derived) holds for steady sinusoidal state" in text
+    assert "from 103.5 Ω to 126.5 Ω, moved most by its inductance" in text
+    assert "with R: its resistance; X: reactance" in text
+    assert "[1] Z = √(R² + X²) Ohm's law for rms magnitudes (derived) validity: steady sinusoidal state" in text
 
 
 def test_a_stated_datum_and_a_noted_figure_read_as_such() -> None:

@@ -78,7 +78,7 @@ def test_a_list_breaks_between_its_items_and_stays_on_the_page(items: list[str],
 def test_rows_align_at_the_right_and_a_long_name_gets_its_own_line() -> None:
     assert rows([("a", "1.0", "x"), ("bb", "22.0", "yy")], 40, 2) == ["  a    1.0   x", "  bb  22.0  yy"]
     assert rows([("a long name of a part", "1.0"), ("b", "22.0")], 16, 0) == [
-        "a long name of a", "part", "             1.0", "b           22.0",
+        "a long name of", "  a part", "             1.0", "b           22.0",
     ]  # fmt: skip
 
 

@@ -9,8 +9,9 @@ import pytest
 
 from circuitlint.definition.reading import read_text
 from circuitlint.errors import DefinitionError
+from circuitlint.study.installation import study, study_boards
 from circuitlint.study.loads import CORE
-from circuitlint.study.study import CircuitStudy, Figure, study, study_boards
+from circuitlint.study.study import CircuitStudy, Figure
 from circuitlint.study.worksheet import Key
 
 TURN = cmath.exp(-2j * math.pi / 3)
@@ -55,7 +56,7 @@ def test_phase_and_neutral_currents_of_a_board_of_twelve_are_the_phasor_sums() -
 
 def test_each_circuit_sees_the_voltage_that_the_network_of_all_gives_it() -> None:
     """The study of one circuit, with the others' drop as a datum, meets the solution of the whole board."""
-    circuits, loads = twelve()
+    circuits, _ = twelve()
     feeder = "{section: 2.5 mm2, length: 60 m, conductor: copper, conductor_class: 2, reactance: 0.1 ohm/km}"
     whole = read_text(installation(feeder, circuits))
     state = study_boards(whole, CORE)["DB1"]

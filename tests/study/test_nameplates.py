@@ -8,8 +8,9 @@ import pytest
 
 from circuitlint.definition.reading import read_text
 from circuitlint.errors import DefinitionError
+from circuitlint.study.installation import study
 from circuitlint.study.loads import CORE
-from circuitlint.study.study import CircuitStudy, Figure, study
+from circuitlint.study.study import CircuitStudy, Figure
 
 RESISTANCE, INDUCTANCE, VOLTS, HERTZ = 21.0, 0.36, 230.0, 50.0
 REACTANCE = 2 * math.pi * HERTZ * INDUCTANCE

@@ -12,8 +12,9 @@ from hypothesis import strategies as st
 
 from circuitlint.definition.reading import read_text
 from circuitlint.study.balance import imbalance
+from circuitlint.study.installation import study
 from circuitlint.study.loads import CORE
-from circuitlint.study.study import CircuitStudy, study
+from circuitlint.study.study import CircuitStudy
 from circuitlint.study.worksheet import Key
 
 OMEGA = 2 * math.pi * 50
@@ -25,7 +26,9 @@ LEAVES = st.one_of(
     st.tuples(st.just("impedance"), SIZES, SIZES),
 )
 TREES = st.recursive(
-    LEAVES, lambda below: st.tuples(st.sampled_from(["series", "parallel"]), st.lists(below, min_size=1, max_size=3)), max_leaves=12
+    LEAVES,
+    lambda below: st.tuples(st.sampled_from(["series", "parallel"]), st.lists(below, min_size=1, max_size=3)),
+    max_leaves=12,
 )
 
 

@@ -10,8 +10,9 @@ import pytest
 import yaml
 
 from circuitlint.definition.reading import read_text
+from circuitlint.study.installation import study
 from circuitlint.study.loads import CORE
-from circuitlint.study.study import CircuitStudy, Figure, study
+from circuitlint.study.study import CircuitStudy, Figure
 
 CASES: list[dict[str, Any]] = yaml.safe_load(Path(__file__).with_name("textbook_circuits.yaml").read_text("utf-8"))
 

@@ -11,9 +11,10 @@ import pytest
 from scipy.optimize import differential_evolution
 
 from circuitlint.definition.reading import read_text
+from circuitlint.study.installation import study
 from circuitlint.study.loads import CORE
 from circuitlint.study.states import COLD
-from circuitlint.study.study import CircuitStudy, Figure, study
+from circuitlint.study.study import CircuitStudy, Figure
 from circuitlint.study.worksheet import Key
 
 SOUGHT = ("current", "power-factor", "voltage-drop-share")

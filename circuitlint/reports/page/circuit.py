@@ -23,6 +23,7 @@ from circuitlint.reports.page.triangles import impedance_triangle, power_triangl
 from circuitlint.review.record import Check, Circuit, Record
 
 ON_TRIANGLES = (("resistance", "reactance"), ("active-power", "reactive-power"))
+NOTHING = '<p class="plate quiet">The record holds no phasors, regions or curves of this circuit.</p>'
 COVERAGE = ("nonconforming", "not assessed", "conforms", "not applicable")
 
 
@@ -54,9 +55,7 @@ def circuits(record: Record, references: References, reference: Reference) -> st
         '<button type="button" id="unfold">Unfold all shown</button></div>'
         '<p class="told" id="shown" role="status"></p>'
     )
-    listed = "".join(
-        _circuit(one, number, record, references, reference) for number, one in enumerate(record.circuits, 1)
-    )
+    listed = "".join(_circuit(one, number, record, references, reference) for number, one in enumerate(record.circuits, 1))
     return f'{controls}<div class="circuits" id="list">{listed}</div>' if listed else "<p>There are no circuits.</p>"
 
 
@@ -69,8 +68,7 @@ def _circuit(circuit: Circuit, number: int, record: Record, references: Referenc
         drawn = f"{bar} <span>{percent(least.margin)}</span>"
     many = sum(one.severity is not None for one in circuit.checks)
     data = (
-        f' data-held="{int(circuit.held)}" data-open="{int(not_assessed(circuit))}" data-margin="{margin}"'
-        f' data-findings="{many}"'
+        f' data-held="{int(circuit.held)}" data-open="{int(not_assessed(circuit))}" data-margin="{margin}" data-findings="{many}"'
     )
     head = (
         f'<summary><h3>{isolated(circuit.tag)}</h3> <span class="serves">{isolated(circuit.serves)}</span> '
@@ -89,19 +87,14 @@ def _body(circuit: Circuit, number: int, record: Record, references: References,
     made = [f'<div class="sheet" id="k{number}">', _facts(circuit)]
     if circuit.not_solved:
         made.append(
-            f'<p class="note">{mark("not assessed")} The circuit could not be studied: '
-            f"{escape(circuit.not_solved)}.</p>"
+            f'<p class="note">{mark("not assessed")}: the circuit could not be studied, since {escape(circuit.not_solved)}.</p>'
         )
     made.append(_plates(circuit, reference))
     made.append(f"<h4>Checks</h4>{_checks(circuit, references)}")
     made.append(f"<h4>Calculation sheet</h4>{calculation_sheet(circuit, record.formulas, references, number)}")
     chosen = sorted(
         {index for index, one in enumerate(record.concessions) if one.tag == circuit.tag}
-        | {
-            one.concession
-            for one in circuit.checks
-            if one.concession is not None and one.concession < len(record.concessions)
-        }
+        | {one.concession for one in circuit.checks if one.concession is not None and one.concession < len(record.concessions)}
     )
     granted = f"<h4>Concessions</h4>{concessions(record, chosen)}" if chosen else ""
     texts = [record.cautions.get(key, key) for key in circuit.cautions]
@@ -136,15 +129,17 @@ def _plates(circuit: Circuit, reference: Reference) -> str:
         if any(one.state == "steady" for one in circuit.phasors)
         else next((one.state for one in circuit.phasors), "steady")
     )
-    plates = [
-        _plate(f"Phasors, {state}", phasor_diagram(circuit, state, reference), _key(circuit, state)),
-        _plate(f"Impedance, {state}", impedance_triangle(circuit, state)),
-        _plate(f"Power, {state}", power_triangle(circuit, state)),
-    ]
+    plates = []
+    if circuit.system != "dc":
+        plates = [
+            _plate(f"Phasors, {state}", phasor_diagram(circuit, state, reference), _key(circuit, state)),
+            _plate(f"Impedance, {state}", impedance_triangle(circuit, state)),
+            _plate(f"Power, {state}", power_triangle(circuit, state)),
+        ]
     folded = ""
     for one in circuit.regions:
         plate = _plate(f"Worst-case region, {one.state}", region_plot(circuit, one))
-        if circuit.phasors and (one.state != state or (one.across, one.up) in ON_TRIANGLES):
+        if circuit.phasors and circuit.system != "dc" and (one.state != state or (one.across, one.up) in ON_TRIANGLES):
             folded += plate
         else:
             plates.append(plate)
@@ -152,13 +147,11 @@ def _plates(circuit: Circuit, reference: Reference) -> str:
         caption = sentence(plain(curve.name))
         caption += f", {curve.state}" if curve.state and not curve.name.startswith(curve.state) else ""
         plates.append(
-            _plate(
-                caption, curve_plot(circuit, curve), f'<p class="key">{escape(curve.note)}</p>' if curve.note else ""
-            )
+            _plate(caption, curve_plot(circuit, curve), f'<p class="key">{escape(curve.note)}</p>' if curve.note else "")
         )
     made = (
         f'<div class="plates"><figure class="plate tall"><figcaption>One line</figcaption>{one_line(circuit)}</figure>'
-        f'<div class="grid">{"".join(plates)}</div></div>'
+        f'<div class="grid">{"".join(plates) or NOTHING}</div></div>'
     )
     if folded:
         made += (
@@ -180,9 +173,7 @@ def _key(circuit: Circuit, state: str) -> str:
     named = [one for one in arrows if one.of and one.sub not in ("R", "L", "C", "cable")]
     parts = [f"{one.lead}<sub>{escape(one.sub)}</sub> <code>{escape(one.of)}</code>" for one in named]
     if not closes and any(one.of and one.lead == "U" for one in arrows):
-        parts.append(
-            "parts drawn from the origin, since the record does not hold all that add up to the supply voltage"
-        )
+        parts.append("parts drawn from the origin, since the record does not hold all that add up to the supply voltage")
     return f'<p class="key">{"; ".join(parts)}</p>' if parts else ""
 
 
@@ -202,9 +193,7 @@ def _check(one: Check, references: References) -> str:
     lines += [f"<small>{escape(one.why)}</small>"] if one.why else []
     lines += [f"<small>Needed: {', '.join(map(escape, one.needs))}</small>"] if one.needs else []
     lines += [f"<small>Would help: {escape(one.help)}</small>"] if one.help else []
-    lines += (
-        [f"<small>Moved most by {escape(one.moved_by)}</small>"] if one.moved_by and one.worst != one.nominal else []
-    )
+    lines += [f"<small>Moved most by {escape(one.moved_by)}</small>"] if one.moved_by and one.worst != one.nominal else []
     state = f'<br><span class="quiet">{escape(one.state)}</span>' if one.state else ""
     where = f"<small>{place_words(one)}</small>" if one.severity is not None else ""
     return (

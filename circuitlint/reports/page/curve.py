@@ -44,9 +44,7 @@ def curve_plot(circuit: Circuit, curve: Curve) -> str:
         f"From {quantity(values[0], curve.dimension)} at the start; farthest {words} at {when}; "
         f"{quantity(values[-1], curve.dimension)} after {until}.{' ' + curve.note if curve.note else ''}"
     )
-    return svg.drawing(
-        "curve", extent.grown(4.0), title, desc, f"{zero}{axes}{svg.path(kept, 'trace')}{dot}{svg.labels(placed)}"
-    )
+    return svg.drawing("curve", extent.grown(4.0), title, desc, f"{zero}{axes}{svg.path(kept, 'trace')}{dot}{svg.labels(placed)}")
 
 
 def thinned(points: list[tuple[float, float]]) -> list[tuple[float, float]]:

@@ -10,7 +10,7 @@ from circuitlint.reports.page import margins
 from circuitlint.reports.page.marks import mark, result_of
 from circuitlint.reports.page.overview import cells
 from circuitlint.reports.page.sheet import References
-from circuitlint.reports.page.text import count, escape, isolated, percent, quantity, sentence, stated, words
+from circuitlint.reports.page.text import NOT_A_NUMBER, count, escape, isolated, percent, quantity, sentence, stated, words
 from circuitlint.review.record import SEVERITIES, Check, Circuit, Record
 
 TIGHTEST = 30
@@ -38,16 +38,15 @@ def limit_words(check: Check, references: References) -> str:
     if check.limit is None:
         return ""
     one = check.limit
-    return (
-        f"{check.sense} {stated(one.value, one.dimension)}, set by {escape(one.set_by)}, "
-        f"{references.to_source(one.source)}"
-    )
+    return f"{check.sense} {stated(one.value, one.dimension)}, set by {escape(one.set_by)}, {references.to_source(one.source)}"
 
 
 def margin_words(check: Check) -> str:
     """The margin drawn and in numbers; empty where there is none."""
     if check.margin is None:
         return ""
+    if not math.isfinite(check.margin):
+        return NOT_A_NUMBER
     return f"{margins.bar(check.margin, check.nominal_margin, check.margin < 0.0)} {percent(check.margin)}"
 
 
@@ -66,8 +65,7 @@ def findings(record: Record, anchors: dict[str, int], references: References) ->
     checks = {(one.tag, check.id): (one, check) for one in record.circuits for check in one.checks}
     found = Counter(one.severity for one in record.findings)
     boxes = "".join(
-        f'<label><input type="checkbox" value="{name}" checked> {mark(name)} '
-        f'<span class="quiet">{found[name]}</span></label>'
+        f'<label><input type="checkbox" value="{name}" checked> {mark(name)} <span class="quiet">{found[name]}</span></label>'
         for name in SEVERITIES
         if found[name]
     )
@@ -146,9 +144,7 @@ def margins_chart(record: Record, anchors: dict[str, int]) -> str:
     scale = margins.scale_head()
     tightest = sorted(listed, key=lambda each: each[2])[:TIGHTEST]
     names = "".join(_tight_row(circuit, check, margin, anchors) for circuit, check, margin in tightest)
-    which = (
-        "All checks with a margin" if len(listed) <= TIGHTEST else f"The {TIGHTEST} tightest of {len(listed)} checks"
-    )
+    which = "All checks with a margin" if len(listed) <= TIGHTEST else f"The {TIGHTEST} tightest of {len(listed)} checks"
     return (
         "<p>Room left in the worst case as a share of the limit. Hatched: beyond the limit. One stroke for each "
         "check.</p>"
@@ -199,9 +195,5 @@ def least_margin(circuit: Circuit) -> Check | None:
 def found_words(circuit: Circuit) -> str:
     """How many findings of each severity a circuit has."""
     found = Counter(one.severity for one in circuit.checks if one.severity is not None)
-    said = [
-        count(found[name], name, name if name != "observation" else "observations")
-        for name in SEVERITIES
-        if found[name]
-    ]
+    said = [count(found[name], name, name if name != "observation" else "observations") for name in SEVERITIES if found[name]]
     return ", ".join(said) or "no findings"

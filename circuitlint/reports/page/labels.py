@@ -216,12 +216,7 @@ class Placer:
         ):
             return False
         for other in self.taken:
-            if (
-                left < other.right + 1.0
-                and other.left < right + 1.0
-                and top < other.bottom + 1.0
-                and (other.top < bottom + 1.0)
-            ):
+            if left < other.right + 1.0 and other.left < right + 1.0 and top < other.bottom + 1.0 and (other.top < bottom + 1.0):
                 return False
         rim = Box(left - RIM, top - RIM, right + RIM, bottom + RIM)
         for line in self.lines:

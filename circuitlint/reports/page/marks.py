@@ -8,8 +8,7 @@ _SHAPES = {
     "major": '<path class="fill" d="M6 .8L11.6 11H.4Z"/>',
     "minor": '<path d="M6 1.6L11 10.6H1Z"/><path class="fill" d="M6 5.8L8.7 10.6H3.3Z"/>',
     "observation": '<circle cx="6" cy="6" r="4.6"/><path d="M6 5.2V9M6 3v1"/>',
-    "not-assessed": '<path stroke-dasharray="2 1.4" d="M1.2 1.2H10.8V10.8H1.2Z"/>'
-    '<path d="M4 4.4a2 2 0 1 1 2 2.2v1M6 8.6v1"/>',
+    "not-assessed": '<path stroke-dasharray="2 1.4" d="M1.2 1.2H10.8V10.8H1.2Z"/><path d="M4 4.4a2 2 0 1 1 2 2.2v1M6 8.6v1"/>',
     "conforms": '<path d="M1.5 6.5L4.8 9.8L10.6 2.6"/>',
     "nonconforming": '<path d="M2 2L10 10M10 2L2 10"/>',
     "held": '<path class="fill" d="M3.6.6H8.4L11.4 3.6V8.4L8.4 11.4H3.6L.6 8.4V3.6Z"/><path class="bar" d="M3 6H9"/>',

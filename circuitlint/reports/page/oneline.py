@@ -80,7 +80,7 @@ def _part(element: Element, system: str, longest: int) -> Block:
     for index, words in enumerate(lines):
         y = baseline + index * LINE
         made.append(svg.text(x, y, words, "name" if index == 0 else ""))
-        boxes.append(Box(x, y - SIZE, x + width_of(words), y + SIZE * 0.3))
+        boxes.append(Box(x, y - SIZE * 0.95, x + width_of(words), y + SIZE * 0.3))
     right = max([drawn.reach, *(box.right for box in boxes)])
     return Block("".join(made), tall, LEFT, right, tuple(boxes))
 
@@ -99,9 +99,7 @@ def _stacked(blocks: list[Block]) -> Block:
         made.append(f'<g transform="translate(0 {svg.num(y)})">{block.markup}</g>' if y else block.markup)
         boxes += [Box(box.left, box.top + y, box.right, box.bottom + y) for box in block.boxes]
         y += block.height
-    return Block(
-        "".join(made), y, max(block.left for block in blocks), max(block.right for block in blocks), tuple(boxes)
-    )
+    return Block("".join(made), y, max(block.left for block in blocks), max(block.right for block in blocks), tuple(boxes))
 
 
 def _side_by_side(blocks: list[Block]) -> Block:
@@ -117,9 +115,7 @@ def _side_by_side(blocks: list[Block]) -> Block:
     bars = "".join(svg.line(0.0, y, x, y, "sym") for y in (WIRE, WIRE + tall))
     ends = svg.line(0.0, 0.0, 0.0, WIRE, "sym") + svg.line(0.0, WIRE + tall, 0.0, tall + 2.0 * WIRE, "sym")
     dots = "".join(f'<circle class="node" cx="0" cy="{svg.num(y)}" r="2.2"/>' for y in (WIRE, WIRE + tall))
-    return Block(
-        "".join(made) + bars + ends + dots, tall + 2.0 * WIRE, blocks[0].left, x + blocks[-1].right, tuple(boxes)
-    )
+    return Block("".join(made) + bars + ends + dots, tall + 2.0 * WIRE, blocks[0].left, x + blocks[-1].right, tuple(boxes))
 
 
 def _spoken(element: Element) -> str:

@@ -166,7 +166,8 @@ def summary(record: Record) -> str:
         made.append(f'<div class="note"><h3>What failed</h3><ul>{listed}</ul></div>')
     if record.concessions:
         made.append(f"<h3>Concessions</h3>{concessions(record, range(len(record.concessions)))}")
-    made.append(f'<p class="statement">{escape(record.statement)}</p>')
+    if record.statement.strip() != record.ruleset.statement.strip():
+        made.append(f'<p class="statement">{escape(record.statement)}</p>')
     return "".join(made)
 
 

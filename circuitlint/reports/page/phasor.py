@@ -20,6 +20,7 @@ from circuitlint.review.record import Circuit, Element
 Reference = Literal["current", "voltage"]
 Table = dict[tuple[str, str], complex]
 
+KINDS = {"parallel": "p", "resistor": "R", "capacitor": "C"}
 WIDE, HIGH = 210.0, 210.0
 MOST_ARROWS = 24
 CLOSES = 1e-6
@@ -107,7 +108,8 @@ def _letter(key: tuple[str, str]) -> str:
     letter = dict(PARTS).get(key[0])
     if letter:
         return letter
-    return "cable" if key[1].startswith("cable") else "p" if key[1].endswith("parallel") else "v"
+    kind = key[1].rpartition(".")[2]
+    return "cable" if key[1].startswith("cable") else KINDS.get(kind, "v")
 
 
 def _branches(tree: Element, table: Table, current: complex) -> list[Arrow]:
@@ -136,17 +138,13 @@ def phasor_diagram(circuit: Circuit, state: str, reference: Reference = "current
         return ""
     supply, current = arrows[0].value, arrows[1].value
     turn = -cmath.phase(current) if reference == "current" and current != 0 else -cmath.phase(supply)
-    turned = [
-        one._replace(tail=one.tail * cmath.exp(1j * turn), value=one.value * cmath.exp(1j * turn)) for one in arrows
-    ]
+    turned = [one._replace(tail=one.tail * cmath.exp(1j * turn), value=one.value * cmath.exp(1j * turn)) for one in arrows]
     volts, amperes = _scales(turned)
     drawn = [(one, *_pixels(one, volts, amperes)) for one in turned]
     placer = Placer([Segment(x, y, x + dx, y + dy) for _, (x, y), (dx, dy) in drawn])
     corners = Box(0.0, 0.0, 0.0, 0.0)
     for one in placer.lines:
-        corners = corners.around(
-            Box(min(one.x1, one.x2), min(one.y1, one.y2), max(one.x1, one.x2), max(one.y1, one.y2))
-        )
+        corners = corners.around(Box(min(one.x1, one.x2), min(one.y1, one.y2), max(one.x1, one.x2), max(one.y1, one.y2)))
     placer.bounds = Box(corners.left - 104.0, corners.top - 30.0, corners.right + 104.0, corners.bottom + 30.0)
     angle = cmath.phase(turned[0].value) - (cmath.phase(turned[1].value) if current != 0 else 0.0)
     side = 1.0 if math.sin(angle) >= 0.0 else -1.0
@@ -234,9 +232,7 @@ def _wedge(voltage: complex, current: complex, placer: Placer) -> tuple[str, lis
     if abs(angle) < math.radians(4.0):
         return "", []
     radius = 30.0
-    points = [
-        (radius * math.cos(start + angle * k / 6.0), -radius * math.sin(start + angle * k / 6.0)) for k in range(7)
-    ]
+    points = [(radius * math.cos(start + angle * k / 6.0), -radius * math.sin(start + angle * k / 6.0)) for k in range(7)]
     placer.lines += [Segment(*a, *b) for a, b in itertools.pairwise(points)]
     turns = [start + angle * share for share in (0.5, 0.7, 0.3)]
     spots = tuple((radius * math.cos(turn), -radius * math.sin(turn), turn) for turn in turns)

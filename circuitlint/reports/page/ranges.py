@@ -123,10 +123,7 @@ def _part_beyond(frame: Frame, points: list[svg.Point], check: Check, upright: b
 
 def _hatched(left: float, top: float, right: float, bottom: float) -> str:
     wide, high = max(right - left, 0.0), max(bottom - top, 0.0)
-    return (
-        f'<rect class="beyond" x="{svg.num(left)}" y="{svg.num(top)}" width="{svg.num(wide)}"'
-        f' height="{svg.num(high)}"/>'
-    )
+    return f'<rect class="beyond" x="{svg.num(left)}" y="{svg.num(top)}" width="{svg.num(wide)}" height="{svg.num(high)}"/>'
 
 
 def _describe(across: Figure, up: Figure, limits: list[Check], shown: list[Check]) -> str:
@@ -139,7 +136,5 @@ def _describe(across: Figure, up: Figure, limits: list[Check], shown: list[Check
     for check in limits:
         if check.limit is not None:
             where = "" if check in shown else ", outside the picture"
-            said.append(
-                f"limit {plain(check.figure)} {check.sense} {stated(check.limit.value, check.limit.dimension)}{where}"
-            )
+            said.append(f"limit {plain(check.figure)} {check.sense} {stated(check.limit.value, check.limit.dimension)}{where}")
     return "; ".join(said) + "."

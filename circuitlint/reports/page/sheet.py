@@ -64,9 +64,7 @@ def _number(one: Input) -> str:
     return size if one.angle is None else f"{size} ∠ {quantity(one.angle, 'angle')}"
 
 
-def calculation_sheet(
-    circuit: Circuit, formulas: Mapping[str, FormulaRecord], references: References, number: int
-) -> str:
+def calculation_sheet(circuit: Circuit, formulas: Mapping[str, FormulaRecord], references: References, number: int) -> str:
     """One table for each state, its figures grouped by part."""
     if not circuit.figures:
         return "<p>There are no figures.</p>"
@@ -125,7 +123,4 @@ def _row(one: Figure, formulas: Mapping[str, FormulaRecord], references: Referen
     if remarks:
         equation += f"<small>{'; '.join(remarks)}</small>"
     size, low, high = (quantity(value, one.dimension) for value in (one.nominal, one.lowest, one.highest))
-    return (
-        f'<tr><th scope="row">{name}<td>{size}<td>{low}<td>{high}<td class="eq">{equation}'
-        f"<td>{references.to_formula(one.formula)}"
-    )
+    return f'<tr><th scope="row">{name}<td>{size}<td>{low}<td>{high}<td>{equation}<td>{references.to_formula(one.formula)}'

@@ -33,10 +33,7 @@ def _hash(text: str) -> str:
 
 def policy(style: str, script: str) -> str:
     """What the page may load and run: nothing but its own style sheet and script, known by their digests."""
-    return (
-        f"default-src 'none'; style-src '{_hash(style)}'; script-src '{_hash(script)}'; "
-        "base-uri 'none'; form-action 'none'"
-    )
+    return f"default-src 'none'; style-src '{_hash(style)}'; script-src '{_hash(script)}'; base-uri 'none'; form-action 'none'"
 
 
 def document(title: str, digest: str, header: str, sections: Iterable[Section]) -> str:

@@ -102,9 +102,7 @@ def labels(placed: Iterable[Placed]) -> str:
         if sub and rest:
             rest = f'<tspan dy="{num(-SIZE * 0.22, 1)}">{rest}</tspan>'
         where = "" if one.anchor == "start" else f' text-anchor="{one.anchor}"'
-        made.append(
-            f'<text x="{num(one.x, 1)}" y="{num(one.baseline, 1)}"{where}>{escape(label.lead)}{sub}{rest}</text>'
-        )
+        made.append(f'<text x="{num(one.x, 1)}" y="{num(one.baseline, 1)}"{where}>{escape(label.lead)}{sub}{rest}</text>')
     return "".join(made)
 
 

@@ -42,9 +42,7 @@ def _cable(system: str) -> Symbol:
 
 
 def _coil(system: str) -> Symbol:
-    return Symbol(
-        _path("M0 0a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5"), 30.0, 6.0
-    )
+    return Symbol(_path("M0 0a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5a4.5 3.75 0 0 1 0 7.5"), 30.0, 6.0)
 
 
 def _resistor(system: str) -> Symbol:

@@ -82,9 +82,7 @@ def _triangle(
         spot = (radius * math.cos(middle), -radius * math.sin(middle), middle)
         words = f" {math.degrees(cmath.phase(found)):.1f}°".replace("-", MINUS)
         wanted.append(Label("φ", "", words, (spot,)))
-        placer.lines.append(
-            Segment(radius * math.cos(beyond), 0.0, radius * math.cos(slope), -radius * math.sin(slope))
-        )
+        placer.lines.append(Segment(radius * math.cos(beyond), 0.0, radius * math.cos(slope), -radius * math.sin(slope)))
     placed = placer.place(wanted)
     xs, ys = [0.0, across, *(x for x, _ in corners)], [0.0, -up, *(y for _, y in corners)]
     extent = Box(min(xs), min(ys), max(xs), max(ys))
