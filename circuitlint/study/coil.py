@@ -33,7 +33,7 @@ class CoilKind(LoadKind[Coil]):
             into.state(f"{place}.{word}", getattr(part, word))
         if not into.state(f"{place}.resistance_at", part.resistance_at):
             into.assume(f"{place}.resistance_at", si.TEMPERATURE, REFERENCE, REFERENCE, REFERENCE, CONVENTION)
-        zero, source = materials.inferred_zero(part.winding)
+        zero, source = materials.winding_zero(part.winding)
         into.table(f"{place}.inferred_zero", si.TEMPERATURE_RISE, zero, source)
         into.token(f"{place}.armature", part.armature or "")
         into.token(f"{place}.made_for", part.made_for or "")

@@ -135,7 +135,7 @@ def _collect_heat(sheet: DataSheet, place: str, run: Cable, loaded: int, shared:
     try:
         tabled, source = ampacity.ampacity(run.section.nominal, run.method, run.insulation, run.conductor, loaded)
         sheet.table(f"{place}.tabled_ampacity", si.CURRENT, tabled, source)
-        factor, source = ampacity.grouping_factor(run.grouped_circuits, "bunched")
+        factor, source = ampacity.grouping_factor(run.grouped_circuits, "bunched", run.method)
         sheet.table(f"{place}.grouping_factor", si.RATIO, factor, source)
     except OutOfTable as error:
         _no_heat(sheet, place, (f"{place}.section", f"{place}.method"), str(error))

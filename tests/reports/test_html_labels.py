@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 import math
 import random
 import re
@@ -21,7 +22,8 @@ from tests.reports.sample_parts import BATTERY, FEED, circuit
 from tests.reports.sample_record import circuits
 
 _TEXT = re.compile(r'<text(?: class="\w+")? x="(\S+)" y="(\S+)"(?: text-anchor="(\w+)")?>(.*?)</text>')
-_LINE = re.compile(r'<path class="([^"]*)"[^>]* d="M(\S+) (\S+?)([lL])(\S+) (\S+?)"/>')
+_PATH = re.compile(r'<path class="([^"]*)"[^>]* d="([^"]*)"/>')
+_STEP = re.compile(r"([MLl])(\S+?) ([^MLlZ\s]+)")
 
 
 def text_boxes(drawing: str) -> list[tuple[str, Box]]:
@@ -37,12 +39,16 @@ def text_boxes(drawing: str) -> list[tuple[str, Box]]:
 
 
 def lines(drawing: str) -> list[Segment]:
-    """Every straight line of a drawing that is a phasor, a side or a leader."""
+    """Every straight line of a drawing that is a phasor, a side, an axis or a leader."""
     found = []
-    for kind, x, y, step, x2, y2 in _LINE.findall(drawing):
-        if kind.split()[0] in ("ph", "side", "leader"):
-            a, b, c, d = map(float, (x, y, x2, y2))
-            found.append(Segment(a, b, a + c, b + d) if step == "l" else Segment(a, b, c, d))
+    for kind, path in _PATH.findall(drawing):
+        if kind.split()[0] not in ("ph", "side", "leader", "axis") or "tip" in kind:
+            continue
+        points: list[tuple[float, float]] = []
+        for step, x, y in _STEP.findall(path):
+            start = points[-1] if step == "l" else (0.0, 0.0)
+            points.append((start[0] + float(x), start[1] + float(y)))
+        found += [Segment(*one, *other) for one, other in itertools.pairwise(points)]
     return found
 
 
@@ -136,6 +142,7 @@ def test_no_label_of_a_random_region_or_curve_covers_another(seed: int) -> None:
     assert all(drawn)
     for drawing in drawn:
         assert overlaps(text_boxes(drawing)) == []
+    assert crossed(drawn[-1]) == []
 
 
 def test_labels_find_a_place_even_where_there_is_none_nearby() -> None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable
+from itertools import pairwise
 from typing import Any
 
 import pytest
@@ -309,7 +310,7 @@ def test_windows_limits_and_bands_of_coils_capacitors_motors_and_meters() -> Non
 
 def test_letter_bands_of_locked_rotors_follow_each_other_without_a_gap() -> None:
     rows = data("motors")["code-letter"]["rows"]
-    for (_, _, high), (_, low, _) in zip(rows, rows[1:], strict=False):
+    for (_, _, high), (_, low, _) in pairwise(rows):
         assert low == pytest.approx(high + 0.01)
 
 

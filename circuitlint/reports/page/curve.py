@@ -27,6 +27,7 @@ def curve_plot(circuit: Circuit, curve: Curve) -> str:
     kept = [frame.point(t, v) for t, v in thinned(points)]
     placer = Placer([Segment(*a, *b) for a, b in itertools.pairwise(kept)], bounds=frame.box.grown(16.0))
     placer.taken += boxes
+    placer.lines += [Segment(0.0, -frame.high, 0.0, 0.0), Segment(0.0, 0.0, frame.wide, 0.0)]
     peak = max(points, key=lambda point: abs(point[1]))
     x, y = frame.point(*peak)
     words = quantity(peak[1], curve.dimension)

@@ -1,0 +1,1 @@
+"""Formulas against published figures, integrators, dimensions and limits."""
