@@ -58,7 +58,7 @@ def test_text_takes_no_colour_beside_the_tested_ones() -> None:
 
 def test_every_mark_has_its_word_and_a_shape_of_its_own() -> None:
     drawn = re.findall(r'<symbol id="m-([\w-]+)"[^>]*>(.*?)</symbol>', shapes())
-    assert len({shape for _, shape in drawn}) == len(drawn) == 9
+    assert len({shape for _, shape in drawn}) == len(drawn) == 10
     for name, _ in drawn:
         assert mark(name.replace("-", " ")).endswith(f"</svg>{name.replace('-', ' ')}</span>")
 

@@ -12,7 +12,7 @@ from circuitlint.reports.page.findings import (
     margin_words,
     place_words,
 )
-from circuitlint.reports.page.marks import mark, not_assessed, result_of, standing
+from circuitlint.reports.page.marks import held_or_not, mark, not_assessed, result_of, standing
 from circuitlint.reports.page.oneline import one_line
 from circuitlint.reports.page.overview import cells, concessions
 from circuitlint.reports.page.phasor import Reference, arrows_of, phasor_diagram
@@ -73,7 +73,7 @@ def _circuit(circuit: Circuit, number: int, record: Record, references: Referenc
     head = (
         f'<summary><h3>{isolated(circuit.tag)}</h3> <span class="serves">{isolated(circuit.serves)}</span> '
         f'<span class="least"><span class="hidden">Least margin </span>{drawn}</span> '
-        f'<span class="standing">{standing(circuit)}</span></summary>'
+        f'<span class="standing">{standing(record, circuit)}</span></summary>'
     )
     single = " open" if len(record.circuits) == 1 else ""
     return (
@@ -84,7 +84,7 @@ def _circuit(circuit: Circuit, number: int, record: Record, references: Referenc
 
 
 def _body(circuit: Circuit, number: int, record: Record, references: References, reference: Reference) -> str:
-    made = [f'<div class="sheet" id="k{number}">', _facts(circuit)]
+    made = [f'<div class="sheet" id="k{number}">', _facts(record, circuit)]
     if circuit.not_solved:
         made.append(
             f'<p class="note">{mark("not assessed")}: the circuit could not be studied, since {escape(circuit.not_solved)}.</p>'
@@ -108,12 +108,12 @@ def _body(circuit: Circuit, number: int, record: Record, references: References,
     return "".join(made)
 
 
-def _facts(circuit: Circuit) -> str:
+def _facts(record: Record, circuit: Circuit) -> str:
     at = circuit.place
     inputs = ", ".join(f"<code>{escape(one)}</code>" for one in circuit.cases.inputs) or "none"
     cases = circuit.cases
     return cells([
-        ("Standing", f"{mark('held' if circuit.held else 'clear')}, {found_words(circuit)}"),
+        ("Standing", f"{mark(held_or_not(record, [circuit]))}, {found_words(circuit)}"),
         ("Fed from", f"{escape(circuit.fed_from)}, {circuit.system}"),
         ("Defined at", f"<code>{escape(at.file)}:{at.line}</code>"),
         ("Worst case", f"{count(cases.count, 'case')}: {escape(cases.method)}"),

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from circuitlint.review.record import Check, Circuit
+from collections.abc import Iterable
+
+from circuitlint.review.record import Check, Circuit, Record
 
 _SHAPES = {
     "major": '<path class="fill" d="M6 .8L11.6 11H.4Z"/>',
@@ -13,6 +15,7 @@ _SHAPES = {
     "nonconforming": '<path d="M2 2L10 10M10 2L2 10"/>',
     "held": '<path class="fill" d="M3.6.6H8.4L11.4 3.6V8.4L8.4 11.4H3.6L.6 8.4V3.6Z"/><path class="bar" d="M3 6H9"/>',
     "clear": '<circle cx="6" cy="6" r="5"/>',
+    "not-held": '<circle cx="6" cy="6" r="5" stroke-dasharray="2 1.4"/><path d="M3 6H9"/>',
     "not-applicable": '<path d="M2.5 6H9.5"/>',
 }
 
@@ -41,9 +44,18 @@ def result_of(check: Check) -> str:
     return said
 
 
-def standing(circuit: Circuit) -> str:
+def held_or_not(record: Record, circuits: Iterable[Circuit]) -> str:
+    """`held`, `clear`, or `not held` where nothing could be held and something does not conform."""
+    some = tuple(circuits)
+    if any(one.held for one in some):
+        return "held"
+    unheld = record.hold_at == "never" and any(check.result == "nonconforming" for one in some for check in one.checks)
+    return "not held" if unheld else "clear"
+
+
+def standing(record: Record, circuit: Circuit) -> str:
     """Whether a circuit is held or clear, and whether something about it was not assessed."""
-    said = mark("held" if circuit.held else "clear")
+    said = mark(held_or_not(record, [circuit]))
     if not_assessed(circuit):
         said += f" {mark('not assessed')}"
     return said

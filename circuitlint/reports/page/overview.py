@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Iterable
 
-from circuitlint.reports.page.marks import mark, not_assessed
+from circuitlint.reports.page.marks import held_or_not, mark, not_assessed
 from circuitlint.reports.page.sheet import References
 from circuitlint.reports.page.text import count, escape, isolated, percent, sentence, stated, words
 from circuitlint.review.record import SEVERITIES, LimitRecord, Record
@@ -68,11 +68,12 @@ def title_block(record: Record, digest: str) -> str:
         ("Made with", f"{escape(record.tool)} {escape(record.version)}"),
         ("Record digest", f'<code title="SHA-256 {digest}">{digest[:16]}</code>'),
     ])  # fmt: skip
-    state = "held" if record.held else "clear"
+    state = "held" if record.held else held_or_not(record, record.circuits)
+    kind = state.replace(" ", "-")
     title = isolated(record.title) if record.title.strip() else "Untitled"
     return (
         f'<header class="block"><div class="name"><p class="kind">Review record</p><h1>{title}</h1></div>'
-        f'<div class="verdict {state}"><p class="word">{mark(state, capital=True)}</p><p>{verdict(record)}</p></div>'
+        f'<div class="verdict {kind}"><p class="word">{mark(state, capital=True)}</p><p>{verdict(record)}</p></div>'
         f"{block}</header>"
     )
 
@@ -151,7 +152,7 @@ def summary(record: Record) -> str:
     counted = "".join(
         f'<div class="count"><dt>{mark(name)}</dt><dd>{number}</dd></div>'
         for name, number in (
-            ("held", len(held)), ("clear", len(record.circuits) - len(held)),
+            ("held", len(held)), ("not held" if record.hold_at == "never" else "clear", len(record.circuits) - len(held)),
             *((name, found[name]) for name in SEVERITIES),
             ("conforms", results["conforms"]), ("not assessed", results["not assessed"]),
         )
