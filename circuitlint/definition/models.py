@@ -68,6 +68,14 @@ class Cable(Entry):
         return str(value) if isinstance(value, int) and not isinstance(value, bool) else value
 
 
+class Correction(Entry):
+    """A capacitor beside the load or on the board, for the power factor; on three phases, of each phase of a star."""
+
+    capacitance: f.Capacitance
+    rated_voltage: f.Voltage | None = None
+    discharge_resistance: f.Resistance | None = Field(default=None, description="Resistor that stays across the capacitor.")
+
+
 class Board(Entry):
     """A distribution board: fed from a supply or another board, through a feeder that all its circuits share."""
 
@@ -75,6 +83,7 @@ class Board(Entry):
     cable: Annotated[list[Cable] | None, OneOrMany] = Field(
         default=None, description="The feeder's runs, in order; `[]` where there is none."
     )
+    correction: Correction | None = Field(default=None, description="A capacitor on the board.")
 
 
 class Meter(Entry):
@@ -115,4 +124,5 @@ class CircuitEntry(Entry):
     cable: Annotated[list[Cable] | None, OneOrMany] = Field(
         default=None, description="Runs from the origin to the load, in order; `[]` where there is none."
     )
+    correction: Correction | None = Field(default=None, description="A capacitor at the load's terminals.")
     meter: Meter | None = None

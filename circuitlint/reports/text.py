@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
 
+from circuitlint.reports.boards import boards
 from circuitlint.reports.circuit_table import circuit_table, counts_of, eventful
 from circuitlint.reports.findings import block, leave, table_for, worst_first
 from circuitlint.reports.gaps import not_assessed, tags_on_lines
@@ -41,6 +42,7 @@ def render(record: Record, *, width: int = 80, colour: bool = False) -> str:
         not_assessed(record, width, paint),
         _concessions(record, width, paint),
         circuit_table(record, width, paint),
+        boards(record, width),
         _cautions(record, width, paint),
     ]
     return "\n\n".join("\n".join(lines) for lines in sections if lines) + "\n"

@@ -12,6 +12,7 @@ from circuitlint.limits.models import OCCASIONS, Limit, Ruleset
 from circuitlint.physics.formula import Formula
 from circuitlint.review import concessions, drawing
 from circuitlint.review import record as r
+from circuitlint.review.boards import records_of
 from circuitlint.review.cautions import CAUTIONS, cautions_for
 from circuitlint.review.rule import Rule
 from circuitlint.review.worked import inputs_of
@@ -93,7 +94,7 @@ class Assembly:
                              needs=rule.needs, helps=rule.helps, plugin=plugin, required=required)
                 for rule, plugin, required, _ in rules
             ),
-            ruleset=self._ruleset(rules), circuits=circuits, findings=findings, concessions=tuple(given),
+            ruleset=self._ruleset(rules), circuits=circuits, boards=self._boards(), findings=findings, concessions=tuple(given),
             problems=tuple(
                 r.Problem(plugin=plugin, rule=rule, what=what, circuits=tuple(dict.fromkeys(tags)))
                 for (plugin, rule, what), tags in self.problems.items()
@@ -107,6 +108,9 @@ class Assembly:
         made = [r.Document(file=file, sha256=digest, kind="definition") for file, digest in self.installation.documents]
         made += [r.Document(file=file, sha256=digest, kind="ruleset") for file, digest in self.ruleset.documents]
         return tuple(made)
+
+    def _boards(self) -> tuple[r.BoardRecord, ...]:
+        return records_of(self.studies[0][0].boards, self.installation.boards) if self.studies else ()
 
     def _concessions(self) -> tuple[list[r.ConcessionRecord], dict[str, int]]:
         flat = [(circuit.tag, check) for circuit, checks in self.studies for some in checks.values() for check in some or ()]

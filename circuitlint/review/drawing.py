@@ -35,7 +35,12 @@ def tree(circuit: CircuitStudy, kinds: Kinds) -> Element:
     if entry.meter is not None:
         values = tuple(text for text in (entry.meter.connection, entry.meter.range.text if entry.meter.range else None) if text)
         parts.append(Element(of="meter", kind="meter", label="meter", values=values))
-    parts.append(_load(entry.load, "load", kinds))  # type: ignore[attr-defined]
+    load = _load(entry.load, "load", kinds)  # type: ignore[attr-defined]
+    if entry.correction is not None:
+        given = (entry.correction.capacitance, entry.correction.rated_voltage)
+        beside = Element(of="correction", kind="capacitor", label="correction", values=tuple(one.text for one in given if one))
+        load = Element(of="terminals", kind="parallel", parts=(load, beside))
+    parts.append(load)
     return Element(of="", kind="supply", label=circuit.feed.supply_name, values=tuple(stated), parts=tuple(parts))
 
 

@@ -199,6 +199,29 @@ class Circuit(Part):
     not_solved: str = Field(default="", description="Why the circuit could not be studied, else empty.")
 
 
+class Conductor(Part):
+    """Voltage to neutral and current of one conductor of a board's feeder, rms, nominal."""
+
+    name: str = Field(description="`L1`, `L2`, `L3`, `N`; `L1` stands for the loop where the supply is not three-phase.")
+    voltage: float | None = Field(description="Volt to neutral; null for the neutral itself.")
+    current: float = Field(description="Ampere in the feeder, the phasor sum of all that runs.")
+    angle: float = Field(description="Angle of the current in radian, against the supply's line 1 to neutral.")
+
+
+class BoardRecord(Part):
+    """A board at nominal values with everything running, each circuit with its diversity."""
+
+    name: str = Field(description="Name of the board.")
+    fed_from: str = Field(description="Name of the supply or board it is fed from.")
+    system: Literal["dc", "single-phase", "three-phase"] = Field(description="System of its supply.")
+    circuits: tuple[str, ...] = Field(description="Tags of the circuits on the board itself.")
+    conductors: tuple[Conductor, ...] = Field(description="Conductors of its feeder.")
+    active_power: float = Field(description="Watt.")
+    reactive_power: float = Field(description="Var; positive where the current lags.")
+    power_factor: float | None = Field(description="At the board, its own capacitor included; null on direct current.")
+    power_factor_uncorrected: float | None = Field(description="The same without the board's own capacitor.")
+
+
 class FormulaRecord(Part):
     """An equation used by a figure. Argument symbols stand in braces."""
 
@@ -304,6 +327,7 @@ class Record(Part):
     rules: tuple[RuleRecord, ...] = Field(description="Every rule that took part.")
     ruleset: RulesetRecord = Field(description="The ruleset the circuits were held against, resolved.")
     circuits: tuple[Circuit, ...] = Field(description="Every circuit, in the order of the definition.")
+    boards: tuple[BoardRecord, ...] = Field(default=(), description="Every board, in the order of the definition.")
     findings: tuple[FindingRef, ...] = Field(description="Every finding, worst first.")
     concessions: tuple[ConcessionRecord, ...] = Field(
         default=(), description="Every concession with what became of it."

@@ -28,6 +28,8 @@ class Asked:
     state: str
     of: str
     found: Figure | Lack
+    tag: str = ""
+    """Tag of the circuit that was asked."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,7 +81,7 @@ Outcome: TypeAlias = Comparison | Fact | Holds | Unknown
 
 def ask(circuit: CircuitStudy, figure: str, state: str, of: str = "") -> Asked:
     """Ask a circuit for a figure; what comes back goes into `at_least` or `at_most`."""
-    return Asked(figure, state, of, circuit.figure(figure, state, of))
+    return Asked(figure, state, of, circuit.figure(figure, state, of), circuit.tag)
 
 
 def at_least(asked: Asked, limit: Limit | None, *, help: str = "", at: Path | None = None) -> Comparison:

@@ -95,6 +95,9 @@ class BoardState:
     currents: dict[str, complex] = field(default_factory=dict)
     """In the feeder, by conductor, `N` among them on three phases."""
     power: complex = 0.0
+    """Complex power that the board takes, its own capacitor included."""
+    correction: complex = 0.0
+    """Complex power of the board's own capacitor."""
     circuits: tuple[str, ...] = ()
     drops: dict[str, complex] = field(default_factory=dict)
     """What the others drop for each circuit on the board, over its nominal loop voltage."""
@@ -193,8 +196,22 @@ class Boards:
         neutral = here.get("N", 0j)
         voltages = {line: here[line] - neutral for line in self.conductors if line != "N"}
         power = sum(voltages[line] * currents[line].conjugate() for line in voltages)
-        below = tuple(load.tag for load in loads if load.board == name)
-        return BoardState(name, self.supply_name, self.supply.system, voltages, currents, power, below)
+        below = tuple(load.tag for load in loads if load.board == name and load.tag)
+        admittance = self.correction(name)
+        corrected = sum((abs(volts) ** 2 * admittance.conjugate() for volts in voltages.values()), 0j)
+        return BoardState(name, self.supply_name, self.supply.system, voltages, currents, power, corrected, below)
+
+    def correction(self, name: str) -> complex:
+        """Admittance of the board's own capacitor, of one phase of a star on three phases; zero where there is none."""
+        given = self.boards[name].correction
+        if given is None or self.supply.frequency is None:
+            return 0j
+        return 2j * math.pi * self.supply.frequency.nominal * given.capacitance.nominal
+
+    def corrections(self) -> list[Loading]:
+        """The boards' own capacitors as loads without a tag."""
+        kind = "balanced" if self.three else "single-phase"
+        return [Loading("", name, ends_of(kind, None), self.correction(name)) for name in self.boards if self.correction(name)]
 
 
 def ends_of(kind: str, phase: str | None) -> tuple[tuple[str, str], ...]:

@@ -30,6 +30,7 @@ def study(
     others = {tag: drop for state in boards.values() for tag, drop in state.drops.items()}
     for definition in installation.circuits:
         one = prepare(definition, installation, kinds, others.get(definition.entry.tag))
+        one.boards = boards
         studies.append(one)
         key = (one.system, shape_of(one.tree), one.way, one.data.signature())
         groups.setdefault(key, []).append(one)
@@ -82,7 +83,7 @@ def study_boards(installation: Installation, kinds: Kinds) -> dict[str, BoardSta
         for _ in range(2):
             alone = [prepare(one, installation, kinds, drops.get(one.entry.tag, 0j)) for one in on_boards]
             loadings, currents = _loadings(alone, kinds)
-            states = boards.solve(loadings)
+            states = boards.solve([*loadings, *boards.corrections()])
             for one in alone:
                 if one.tag in currents:
                     own_path = _own_path(one, boards)

@@ -58,6 +58,8 @@ def collect(
         sheet.lack("cable", "cable, or `cable: []` where there is none", why="the way to the load is not stated")
     for index, run in enumerate(entry.cable or ()):
         _collect_cable(sheet, f"cable[{index}]", run, feed)
+    if entry.correction is not None:
+        kinds["capacitor"].data(entry.correction, "correction", sheet)
     for place, number in counts_of(load, "load"):
         _exact(sheet, f"{place}.count", si.RATIO, float(number), Source("the definition"))
     for place, kind, part in leaves_of(load, "load"):
@@ -176,7 +178,11 @@ def counts_of(load: LoadEntry, place: str) -> list[tuple[str, int]]:
 def circuit_tree(entry: CircuitEntry, load: LoadEntry, feed: Feed) -> Node:
     """The load tree of a circuit, inside a delta where it stands between the lines of three phases."""
     tree = tree_of(load, "load")
-    return Node("delta", "delta", (tree,)) if feed.balanced and entry.connection == "delta" else tree
+    if feed.balanced and entry.connection == "delta":
+        tree = Node("delta", "delta", (tree,))
+    if entry.correction is not None:
+        tree = Node("parallel", "terminals", (tree, Node("capacitor", "correction")))
+    return tree
 
 
 def tree_of(load: LoadEntry, place: str) -> Node:

@@ -5,7 +5,7 @@ It gets a `Figure` with nominal, lowest and highest value, or a `Lack` that says
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -17,7 +17,7 @@ from circuitlint.definition.text import Path
 from circuitlint.physics.formula import Formula
 from circuitlint.si import Dimension, RealArray
 from circuitlint.study.data import DataSheet
-from circuitlint.study.feeding import Feed
+from circuitlint.study.feeding import BoardState, Feed
 from circuitlint.study.plan import Node
 from circuitlint.study.solving import Solution
 from circuitlint.study.worksheet import Key, Lack
@@ -56,6 +56,8 @@ class CircuitStudy:
     """Places of every feeder and cable run from the origin to the load."""
     position: int = 0
     solutions: dict[str, Solution] = field(default_factory=dict)
+    boards: Mapping[str, BoardState] = field(default_factory=dict)
+    """Every board of the installation at nominal values."""
     places: dict[Path, object] = field(default_factory=dict)
     """Places already looked up in the definition."""
 

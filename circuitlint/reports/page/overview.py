@@ -8,6 +8,7 @@ from collections.abc import Iterable
 from circuitlint.reports.page.marks import held_or_not, mark, not_assessed
 from circuitlint.reports.page.sheet import References
 from circuitlint.reports.page.text import count, escape, isolated, percent, sentence, stated, words
+from circuitlint.reports.words import amount
 from circuitlint.review.record import SEVERITIES, LimitRecord, Record
 
 DEFERENCE = (
@@ -167,9 +168,23 @@ def summary(record: Record) -> str:
         made.append(f'<div class="note"><h3>What failed</h3><ul>{listed}</ul></div>')
     if record.concessions:
         made.append(f"<h3>Concessions</h3>{concessions(record, range(len(record.concessions)))}")
+    if record.boards:
+        made.append(f"<h3>Boards, at nominal values with everything running</h3>{_boards(record)}")
     if record.statement.strip() != record.ruleset.statement.strip():
         made.append(f'<p class="statement">{escape(record.statement)}</p>')
     return "".join(made)
+
+
+def _boards(record: Record) -> str:
+    rows = []
+    for one in record.boards:
+        currents = ", ".join(f"{conductor.name} {amount(conductor.current, 'current')}" for conductor in one.conductors)
+        factor = "none" if one.power_factor is None else amount(one.power_factor, "ratio")
+        if one.power_factor != one.power_factor_uncorrected and one.power_factor_uncorrected is not None:
+            factor += f", {amount(one.power_factor_uncorrected, 'ratio')} without its capacitor"
+        power = f"{amount(one.active_power, 'active power')}, {amount(one.reactive_power, 'reactive power')}"
+        rows.append((escape(one.name), escape(one.fed_from), str(len(one.circuits)), currents, power, factor))
+    return table("Boards", ("Board", "Fed from", "Circuits", "Current", "Power", "Power factor"), rows)
 
 
 def _problem(plugin: str, rule: str) -> str:
