@@ -17,8 +17,9 @@ from circuitlint.review.cautions import CAUTIONS, cautions_for
 from circuitlint.review.rule import Rule
 from circuitlint.review.worked import inputs_of
 from circuitlint.sources import Source
-from circuitlint.study.cases import in_words
+from circuitlint.study.cases import FEW, FEW_WITH_CAPACITOR, in_words
 from circuitlint.study.plan import Kinds
+from circuitlint.study.solving import has_capacitor
 from circuitlint.study.study import CircuitStudy
 
 RANK = {"major": 0, "minor": 1, "observation": 2}
@@ -142,7 +143,7 @@ class Assembly:
             place=r.Place(file=spot.file, line=spot.line, column=spot.column, path=spot.path),
             tree=drawing.tree(one, self.kinds),
             cases=r.Cases(count=sum(solution.studied for solution in one.solutions.values()), inputs=inputs,
-                          method=in_words(max((len(s.inputs) for s in one.solutions.values()), default=0), refined)),
+                          method=in_words(max((len(s.inputs) for s in one.solutions.values()), default=0), _few(one), refined)),
             figures=tuple(self._figures(one)) if drawn else (), phasors=tuple(drawing.phasors(one)) if drawn else (),
             curves=tuple(drawing.curves(one)) if drawn else (), regions=tuple(drawing.regions(one)) if drawn else (),
             checks=flat, coverage=coverage, held=any(self._holds(check) for check in flat), cautions=cautions_for(one),
@@ -189,6 +190,10 @@ class Assembly:
             statement=ruleset.statement, built_on=ruleset.built_on, sha256=ruleset.sha256, limits=limits,
             severities=severities, near_the_limit=ruleset.near_the_limit,  # type: ignore[arg-type]
         )
+
+
+def _few(one: CircuitStudy) -> int:
+    return FEW_WITH_CAPACITOR if has_capacitor(one.tree) else FEW
 
 
 def _coverage(checks: Sequence[r.Check] | None) -> r.Coverage:

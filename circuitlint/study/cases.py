@@ -16,7 +16,9 @@ import numpy as np
 
 from circuitlint.si import RealArray
 
-FULL_FACTORIAL = 6
+FEW = 4
+FEW_WITH_CAPACITOR = 6
+"""So many inputs have all their corners studied. A capacitor makes several hills and valleys, so more are taken then."""
 INTERIOR = 16
 SMALLEST_STEP = 1e-3
 PROBE = 0.05
@@ -29,13 +31,13 @@ Evaluate: TypeAlias = Callable[[RealArray], RealArray]
 """Points of shape (circuits, points, inputs) or (1, points, inputs) to figures of shape (figures, circuits, points)."""
 
 
-def opening_points(inputs: int) -> RealArray:
-    """Nominal, one input at a time, corners while they are few, seeded interior points; shape (1, points, inputs)."""
+def opening_points(inputs: int, few: int = FEW_WITH_CAPACITOR) -> RealArray:
+    """Nominal, one input at a time, corners while the inputs are few, seeded interior points; shape (1, points, inputs)."""
     if inputs == 0:
         return np.zeros((1, 1, 0))
     alone = np.concatenate([np.eye(inputs), -np.eye(inputs)])
     blocks = [np.zeros((1, inputs)), alone]
-    if 1 < inputs <= FULL_FACTORIAL:
+    if 1 < inputs <= few:
         blocks.append(np.array(list(product((-1.0, 1.0), repeat=inputs))))
     blocks.append(interior_points(inputs, INTERIOR))
     return np.concatenate(blocks)[np.newaxis]
@@ -54,11 +56,11 @@ def interior_points(inputs: int, count: int) -> RealArray:
     return sequence
 
 
-def vertices_by_sensitivity(figures: RealArray, inputs: int) -> RealArray:
+def vertices_by_sensitivity(figures: RealArray, inputs: int, few: int) -> RealArray:
     """The corners that one-at-a-time sensitivities point to; shape (circuits, vertices, inputs).
 
     `figures` holds the opening points' figures, shape (figures, circuits, points). First come the two corners each figure points
-    to, then every corner of the six inputs that matter most, the others nominal.
+    to, then every corner of the few inputs that matter most, the others nominal.
     """
     circuits = figures.shape[1]
     nominal = figures[:, :, :1]
@@ -67,9 +69,9 @@ def vertices_by_sensitivity(figures: RealArray, inputs: int) -> RealArray:
     signs = np.where(np.nan_to_num(up - down) >= 0.0, 1.0, -1.0)
     both = np.moveaxis(np.concatenate([signs, -signs]), 0, 1)
     reach = np.nan_to_num(np.maximum(np.abs(up - nominal), np.abs(down - nominal)) / np.abs(nominal))
-    most = np.argsort(-np.sum(reach, axis=(0, 1)), kind="stable")[:FULL_FACTORIAL]
-    corners = np.zeros((2**FULL_FACTORIAL, inputs))
-    corners[:, most] = list(product((-1.0, 1.0), repeat=FULL_FACTORIAL))
+    most = np.argsort(-np.sum(reach, axis=(0, 1)), kind="stable")[:few]
+    corners = np.zeros((2**few, inputs))
+    corners[:, most] = list(product((-1.0, 1.0), repeat=few))
     vertices: RealArray = np.concatenate([both, np.broadcast_to(corners, (circuits, *corners.shape))], axis=1)
     return vertices
 
@@ -137,12 +139,12 @@ def dominant(figures: RealArray, inputs: int, names: Sequence[str]) -> list[list
     ]
 
 
-def in_words(inputs: int, circuits_refined: bool) -> str:
+def in_words(inputs: int, few: int, circuits_refined: bool) -> str:
     """How the worst case was looked for, for the record."""
     if inputs == 0:
         return "no tolerances are stated: the nominal case is the only one"
     corners = "all corners"
-    if inputs > FULL_FACTORIAL:
-        corners = f"the corners the sensitivities point to, all corners of the {FULL_FACTORIAL} inputs that matter most"
+    if inputs > few:
+        corners = f"the corners the sensitivities point to, all corners of the {few} inputs that matter most"
     refined = ", then local refinement of each figure a check depends on" if circuits_refined else ""
     return f"nominal, one input at a time, {corners}, {INTERIOR} seeded interior points{refined}"

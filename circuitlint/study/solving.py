@@ -68,14 +68,15 @@ def solve(
             made[number] = values[line.key]
         return made
 
-    opening = cases.opening_points(len(inputs))
+    few = cases.FEW_WITH_CAPACITOR if has_capacitor(tree) else cases.FEW
+    opening = cases.opening_points(len(inputs), few)
     values = run(opening)
     found = figures(values, lines, opening.shape[1])
     wanted = [line for line in lines if _is_sought(line.key, sought, row)]
     points = opening
-    if len(inputs) > cases.FULL_FACTORIAL:
+    if len(inputs) > few:
         picked = found[[row[line.key] for line in wanted if line.key not in sheet.apart]]
-        vertices = np.clip(cases.vertices_by_sensitivity(picked, len(inputs)), -1.0, 1.0)
+        vertices = np.clip(cases.vertices_by_sensitivity(picked, len(inputs), few), -1.0, 1.0)
         points = np.concatenate([np.broadcast_to(opening, (circuits, *opening.shape[1:])), vertices], axis=1)
         found = np.concatenate([found, figures(run(vertices), lines, vertices.shape[1])], axis=2)
     apart = [number for key, number in row.items() if key in sheet.apart]
@@ -97,6 +98,11 @@ def solve(
     moved_by = cases.dominant(found, len(inputs), inputs)
     return Solution(state, sheet, inputs, values, circuits, opening.shape[1], lines, row, found[:, :, 0], lowest, highest,
                     moved_by, faulty, studied, bool(wanted and inputs), broken)
+
+
+def has_capacitor(node: Node) -> bool:
+    """Whether a capacitor stands anywhere in a load tree."""
+    return node.kind == "capacitor" or any(has_capacitor(one) for one in node.nodes)
 
 
 def _is_sought(key: Key, sought: Collection[str] | None, row: Mapping[Key, int]) -> bool:
