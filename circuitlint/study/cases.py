@@ -68,7 +68,8 @@ def vertices_by_sensitivity(figures: RealArray, inputs: int, few: int) -> RealAr
     down = figures[:, :, 1 + inputs : 1 + 2 * inputs]
     signs = np.where(np.nan_to_num(up - down) >= 0.0, 1.0, -1.0)
     both = np.moveaxis(np.concatenate([signs, -signs]), 0, 1)
-    reach = np.nan_to_num(np.maximum(np.abs(up - nominal), np.abs(down - nominal)) / np.abs(nominal))
+    apart = np.nan_to_num(np.maximum(np.abs(up - nominal), np.abs(down - nominal)))
+    reach = np.divide(apart, np.abs(nominal), out=np.zeros_like(apart), where=np.abs(nominal) > 0.0)
     most = np.argsort(-np.sum(reach, axis=(0, 1)), kind="stable")[:few]
     corners = np.zeros((2**few, inputs))
     corners[:, most] = list(product((-1.0, 1.0), repeat=few))

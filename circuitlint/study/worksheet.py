@@ -73,6 +73,7 @@ class Worksheet:
     before: list[Line] = field(default_factory=list)
     sweep: list[Line] = field(default_factory=list)
     rest: list[Line] = field(default_factory=list)
+    slims: dict[frozenset[Key], Worksheet] = field(default_factory=dict)
     apart: set[Key] = field(default_factory=set)
     """Figures nothing else rests on: where one is not a finite number, it alone is lacking."""
 
@@ -162,8 +163,11 @@ class Worksheet:
         self._drop_unsettled()
 
     def only(self, wanted: Iterable[Key]) -> Worksheet:
-        """The same worksheet with no more lines than the wanted figures need."""
+        """The same worksheet with no more lines than the wanted figures need; made once for the same figures."""
         needed: set[Key] = set(wanted)
+        asked = frozenset(needed)
+        if asked in self.slims:
+            return self.slims[asked]
         while True:
             before = len(needed)
             needed |= {one.settles_at for one in self.feedback if one.guess in needed}
@@ -174,7 +178,9 @@ class Worksheet:
                 break
         kept = [line for line in self.lines if line.key in needed]
         feedback = [one for one in self.feedback if one.guess in needed]
-        return Worksheet(kept, feedback, self.lacks, self.index, self.data, self.assumed, apart=self.apart).finish()
+        slim = Worksheet(kept, feedback, self.lacks, self.index, self.data, self.assumed, apart=self.apart)
+        self.slims[asked] = slim
+        return slim.finish()
 
     def run(self, data: Mapping[Key, Any]) -> dict[Key, Any]:
         """Evaluate every line. `data` maps data keys to floats or arrays that broadcast together.
