@@ -2,33 +2,21 @@
 
 from __future__ import annotations
 
-import contextlib
-import sys
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field
 
 from circuitlint.definition.reading import Installation
 from circuitlint.errors import Fault, RulesetError
-from circuitlint.limits.models import Limit, Ruleset
+from circuitlint.isolation.containment import keyboard_heeded, overheard
+from circuitlint.isolation.judging import Bound, judge_all, note_trouble
+from circuitlint.isolation.sealing import closed, seal
+from circuitlint.limits.models import Ruleset
 from circuitlint.limits.reading import bind
-from circuitlint.plugins import Gathered, Plugin, describe
+from circuitlint.plugins import Gathered
 from circuitlint.review import record as r
 from circuitlint.review.assembly import Assembly
 from circuitlint.review.judge import Judge
-from circuitlint.review.rule import Rule
 from circuitlint.study.installation import study
-from circuitlint.study.study import CircuitStudy
-
-
-@dataclass(slots=True)
-class Bound:
-    """A rule with the limits and severities of this review."""
-
-    rule: Rule
-    plugin: Plugin
-    limits: Mapping[str, Limit]
-    judge: Judge
-    required: bool
 
 
 @dataclass(slots=True)
@@ -51,13 +39,18 @@ def review(installation: Installation, ruleset: Ruleset, gathered: Gathered, opt
     bound = bind_rules(ruleset, gathered, assembly)
     sought = {name for one in bound for name in one.rule.figures}
     states = None if options.figures else {state for one in bound for state in one.rule.states}
-    circuits = study(installation, gathered.kinds, sought, states)
-    for number, circuit in enumerate(circuits):
-        checks = {one.rule.name: judge_one(one, circuit, assembly) for one in bound}
-        assembly.add(circuit, checks)
-        options.tell(number + 1, len(circuits))
+    gathered.troubles.drain()
+    with keyboard_heeded(), overheard() as ear:
+        circuits = study(installation, gathered.kinds, sought, states)
+        seal(circuits)
+        ear.drain()
+        for number, circuit in enumerate(circuits):
+            assembly.add(circuit, judge_all(bound, circuit, assembly, ear))
+            options.tell(number + 1, len(circuits))
+        for trouble in gathered.troubles.drain():
+            note_trouble(trouble, circuits, bound, assembly)
     return assembly.record(
-        [(one.rule, one.plugin.name, one.required, one.limits) for one in bound],
+        [(one.rule, one.plugin, one.required, one.limits) for one in bound],
         [r.PluginRecord(name=one.name, version=one.version, origin=one.origin, offers=tuple(one.offers), failed=one.failed)
          for one in gathered.plugins],
     )
@@ -74,7 +67,7 @@ def bind_rules(ruleset: Ruleset, gathered: Gathered, assembly: Assembly) -> list
         if name not in gathered.rules:
             if failed:
                 told = "the rule is in the ruleset, but no plugin that loaded offers it"
-                assembly.lost(name, failed[0].name, told, terms.required)
+                assembly.lost(name, ", ".join(plugin.name for plugin in failed), told, terms.required)
                 continue
             accepted = nearest_rule(name, gathered.rules)
             faults.append(Fault(*terms.place, f"no plugin offers the rule {name!r}", accepted))
@@ -87,7 +80,7 @@ def bind_rules(ruleset: Ruleset, gathered: Gathered, assembly: Assembly) -> list
             continue
         keys = {limit: assembly.source(given.source) for limit, given in limits.items()}
         judge = Judge(rule, terms.severities, ruleset.near_the_limit, keys)
-        bound.append(Bound(rule, plugin, limits, judge, terms.required))
+        bound.append(Bound(rule, plugin.name, closed(limits), judge, terms.required))
     if faults:
         raise RulesetError(faults=faults)
     return bound
@@ -98,21 +91,3 @@ def nearest_rule(name: str, known: Iterable[str]) -> str:
     from_list = sorted(known)
     close = [one for one in from_list if set(one.split("-")) & set(name.split("-"))]
     return f"did you mean {close[0]!r}?" if close else f"one of {', '.join(from_list)}"
-
-
-def judge_one(one: Bound, circuit: CircuitStudy, assembly: Assembly) -> Sequence[r.Check] | None:
-    """One rule on one circuit: its checks, None where it does not apply. What it raises, exits with or prints stays here."""
-    try:
-        with contextlib.redirect_stdout(sys.stderr):
-            if not one.rule.applies(circuit):
-                return None
-            checks = [one.judge.check(circuit, outcome) for outcome in one.rule.check(circuit, one.limits)]
-    except BaseException as error:
-        what = describe(error)
-        assembly.problem(one.plugin.name, one.rule.name, what, (circuit.tag,), fatal=one.required)
-        return [one.judge.failed(circuit, what)]
-    if not checks:
-        what = "the rule says it applies, and yields nothing"
-        assembly.problem(one.plugin.name, one.rule.name, what, (circuit.tag,), fatal=one.required)
-        return [one.judge.failed(circuit, what)]
-    return checks

@@ -7,29 +7,38 @@ definition or a ruleset.
 from __future__ import annotations
 
 import contextlib
+import difflib
 import hashlib
 import importlib.metadata
 import importlib.util
-import inspect
-import os
 import sys
-from collections.abc import Callable, Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass, field
 from pathlib import Path
 from types import ModuleType
-from typing import Any
+from typing import Any, TypeVar
 
 import pluggy
 from pydantic import BaseModel
 
 from circuitlint import hooks
-from circuitlint.errors import InputError, PluginError, RulesetError
-from circuitlint.limits.reading import RulesetText, read_ruleset
+from circuitlint.errors import InputError, PluginError
+from circuitlint.isolation import taking
+from circuitlint.isolation.containment import PRINTED, describe, is_the_persons_wish, keyboard_heeded, overheard
+from circuitlint.isolation.kinds import GuardedFigures, GuardedKind, Troubles
+from circuitlint.isolation.reports import GuardedReport
+from circuitlint.isolation.rules import GuardedRule
+from circuitlint.limits.reading import RulesetText
+from circuitlint.readings.rule import ReadingRule
 from circuitlint.review.rule import Rule
+from circuitlint.study.extras import KnownKinds
 from circuitlint.study.loads import CORE
-from circuitlint.study.plan import LoadKind
 
 GROUP = "circuitlint"
+COMMON = "circuitlint_rules"
+"""The entry point of the common rules, which come first and which nobody replaces."""
+
+T = TypeVar("T")
 
 
 @dataclass(slots=True)
@@ -43,6 +52,12 @@ class Plugin:
     failed: str = ""
     place: str = ""
     """Where it lies on this machine; never part of a record."""
+    printed: bool = False
+    """Whether it printed to standard output while it was loaded or asked."""
+
+    def fail(self, what: str) -> None:
+        """Note a failure; several stand beside each other."""
+        self.failed = f"{self.failed}; {what}" if self.failed else what
 
 
 @dataclass(slots=True)
@@ -51,83 +66,136 @@ class Gathered:
 
     plugins: list[Plugin] = field(default_factory=list)
     rules: dict[str, tuple[Rule, Plugin]] = field(default_factory=dict)
+    reading_rules: dict[str, tuple[ReadingRule, Plugin]] = field(default_factory=dict)
     rulesets: dict[str, RulesetText] = field(default_factory=dict)
     parts: list[tuple[str, bytes]] = field(default_factory=list)
-    kinds: dict[str, LoadKind[Any]] = field(default_factory=lambda: dict(CORE))
+    kinds: KnownKinds = field(default_factory=lambda: KnownKinds(CORE))
     reports: dict[str, hooks.RenderRecord] = field(default_factory=dict)
+    troubles: Troubles = field(default_factory=Troubles)
+    """What load kinds and extra figures did wrong since somebody last asked."""
+    taken: dict[str, str] = field(default_factory=dict)
+    """Which plugin a name belongs to."""
 
     def models(self) -> dict[str, type[BaseModel]]:
         """The models of all load kinds, for reading a definition."""
         return {name: kind.model for name, kind in self.kinds.items()}
 
+    def take(self, what: str, found: Mapping[str, T], plugin: Plugin) -> Mapping[str, T]:
+        """Claim names for a plugin. Raises PluginError, and claims none, where one is taken."""
+        for name in found:
+            if f"{what} {name}" in self.taken:
+                raise PluginError(f"the {what} name {name!r} is taken by {self.taken[f'{what} {name}']}")
+        self.taken.update(dict.fromkeys((f"{what} {name}" for name in found), plugin.name))
+        return found
+
 
 @contextlib.contextmanager
 def guarded(plugin: Plugin) -> Iterator[None]:
     """Whatever a plugin raises, exits with or prints stays here: the failure is noted, prints go to standard error."""
-    try:
-        with contextlib.redirect_stdout(sys.stderr):
+    with overheard() as ear:
+        try:
             yield
-    except BaseException as error:
-        plugin.failed = plugin.failed or describe(error)
+        except BaseException as error:
+            if is_the_persons_wish(error):
+                raise
+            plugin.fail(describe(error))
+    if ear.heard and not plugin.printed:
+        plugin.printed = True
+        plugin.fail(PRINTED)
 
 
-def describe(error: BaseException) -> str:
-    """An exception in one line: kind, message, and the place in the plugin's own file."""
-    text = " ".join(str(error).split()) or "no message"
-    trace = error.__traceback__
-    place = ""
-    while trace is not None:
-        name = os.path.basename(trace.tb_frame.f_code.co_filename)
-        place = f" ({name}, line {trace.tb_lineno})"
-        trace = trace.tb_next
-    return f"{type(error).__name__}: {text[:300]}{place}"
+def gather(paths: Iterable[str] = (), *, installed: bool = True, modules: Iterable[Any] = ()) -> Gathered:
+    """Load installed plugins and those at the given paths, and ask each what it offers; `modules` are loaded already.
 
-
-def gather(paths: Iterable[str] = (), *, installed: bool = True) -> Gathered:
-    """Load installed plugins and those at the given paths, and ask each what it offers.
-
-    Raises InputError where a path is not there. A plugin that fails is noted in `plugins`, never raised.
+    A plugin at a path stands in for an installed one of the same name. Raises InputError where a path is not there. A plugin
+    that fails is noted in `plugins`, never raised.
     """
     gathered = Gathered()
-    for plugin, load in [*(_installed() if installed else ()), *map(_from_path, paths)]:
-        gathered.plugins.append(plugin)
-        module: list[Any] = []
-        with guarded(plugin):
-            module.append(load())
-        if module:
+    given = [*map(_from_path, paths), *map(_from_module, modules)]
+    replaced = {_plain(plugin.name) for plugin, _ in given} - {_plain(COMMON)}
+    with keyboard_heeded():
+        for plugin, load in [*(_installed(replaced) if installed else ()), *given]:
+            gathered.plugins.append(plugin)
+            loaded: list[Any] = []
             with guarded(plugin):
-                _ask(plugin, module[0], gathered)
+                loaded.append(load())
+            if loaded:
+                _ask(plugin, loaded[0], gathered)
     return gathered
 
 
-def _installed() -> Iterator[tuple[Plugin, Callable[[], Any]]]:
-    found = sorted(importlib.metadata.entry_points(group=GROUP), key=lambda one: (one.name != "circuitlint_rules", one.name))
-    for entry in found:
+def _plain(name: str) -> str:
+    return name.replace("-", "_").lower()
+
+
+def _installed(replaced: Iterable[str]) -> Iterator[tuple[Plugin, Callable[[], Any]]]:
+    for entry in sorted(importlib.metadata.entry_points(group=GROUP), key=lambda one: (one.name != COMMON, one.name)):
+        if _plain(entry.name) in replaced or _plain(entry.module) in replaced:
+            continue
         version = entry.dist.version if entry.dist is not None else ""
-        yield Plugin(entry.name, version, "installed"), entry.load
+        plugin = Plugin(entry.name, version, "installed")
+
+        def load(entry: importlib.metadata.EntryPoint = entry, plugin: Plugin = plugin) -> Any:
+            loaded = entry.load()
+            plugin.place = str(getattr(loaded, "__file__", "") or "")
+            return loaded
+
+        yield plugin, load
+
+
+def _from_module(module: Any) -> tuple[Plugin, Callable[[], Any]]:
+    name = str(getattr(module, "__name__", type(module).__name__)).rpartition(".")[2]
+    version, place = (str(getattr(module, word, "")) for word in ("__version__", "__file__"))
+    return Plugin(name, version, "given", place=place), lambda: module
 
 
 def _from_path(path: str) -> tuple[Plugin, Callable[[], ModuleType]]:
-    place = Path(path)
-    file = place / "__init__.py" if place.is_dir() else place
-    if place.is_dir() and not file.is_file():
-        inner = sorted(place.glob("*/__init__.py"))
-        modules = sorted(one for one in place.glob("*.py") if not one.name.startswith(("test_", "conftest", "setup")))
-        if len(inner) == 1:
-            file = inner[0]
-        elif len(modules) == 1:
-            file = modules[0]
-        else:
-            raise InputError(f"{path}: the folder holds no plugin; accepted: one module, or one package with __init__.py")
-    if not file.is_file():
-        raise InputError(f"{path}: there is no such plugin file or folder")
-    name = file.parent.name if file.name == "__init__.py" else file.stem
-    digest = hashlib.sha256(file.read_bytes()).hexdigest()[:12]
+    file = _file_of(path)
+    package = file.name == "__init__.py"
+    name = file.resolve().parent.name if package else file.stem
+    plugin = Plugin(name, "", name if package else file.name, place=str(file))
 
     def load() -> ModuleType:
-        return _load_file(name, file)
+        plugin.version = f"sha256 {_digest(file)}"
+        module = _load_file(name, file)
+        stated = getattr(module, "__version__", None)
+        plugin.version = f"{stated}, {plugin.version}" if isinstance(stated, str) else plugin.version
+        return module
 
-    return Plugin(name, f"sha256 {digest}", file.name if file.name != "__init__.py" else name, place=str(file)), load
+    return plugin, load
+
+
+def _file_of(path: str) -> Path:
+    """The file to load: the one named, a package's first file, or the only plugin in a folder. Raises InputError."""
+    place = Path(path)
+    try:
+        if not place.exists():
+            raise InputError(f"{path}: there is no such plugin file or folder")
+        if not place.is_dir():
+            if place.suffix != ".py":
+                raise InputError(f"{path}: this is not a plugin; accepted: a Python file, or a folder that holds a plugin")
+            return place
+        if (place / "__init__.py").is_file():
+            return place / "__init__.py"
+        packages = sorted(one for one in place.glob("*/__init__.py") if one.parent.name not in ("tests", "test"))
+        single = sorted(one for one in place.glob("*.py") if not one.name.startswith(("test_", "conftest", "setup")))
+    except (OSError, ValueError) as error:
+        raise InputError(f"{path}: the plugin cannot be read: {error}") from None
+    if len(packages + single) != 1:
+        found = ", ".join(one.parent.name if one.name == "__init__.py" else one.name for one in packages + single)
+        told = f"the folder holds more than one ({found})" if found else "the folder holds no plugin"
+        raise InputError(f"{path}: {told}; accepted: a Python file, or a folder with one module or one package")
+    return (packages + single)[0]
+
+
+def _digest(file: Path) -> str:
+    """A digest over the plugin's files, by name and content."""
+    files = [file] if file.name != "__init__.py" else sorted(
+        one for one in file.parent.rglob("*") if one.is_file() and one.suffix in (".py", ".yaml", ".yml"))
+    whole = hashlib.sha256()
+    for one in files:
+        whole.update(one.relative_to(file.parent).as_posix().encode() + b"\0" + one.read_bytes() + b"\0")
+    return whole.hexdigest()[:12]
 
 
 def _load_file(name: str, file: Path) -> ModuleType:
@@ -138,86 +206,109 @@ def _load_file(name: str, file: Path) -> ModuleType:
     if spec is None or spec.loader is None:
         raise PluginError(f"{name} is not a Python module")
     module = importlib.util.module_from_spec(spec)
+    for old in [one for one in sys.modules if one == unique or one.startswith(f"{unique}.")]:
+        del sys.modules[old]
     sys.modules[unique] = module
     try:
         spec.loader.exec_module(module)
+    except ModuleNotFoundError as error:
+        sys.modules.pop(unique, None)
+        if error.name == name or str(error.name).startswith(f"{name}."):
+            raise PluginError(f"{name} imports itself by name, and is not installed; accepted: `from . import ...`") from None
+        raise
     except BaseException:
-        del sys.modules[unique]
+        sys.modules.pop(unique, None)
         raise
     return module
 
 
 def _ask(plugin: Plugin, module: Any, gathered: Gathered) -> None:
+    """Ask a loaded plugin what it offers: load kinds before what rests on them; each hook fails alone."""
     manager = pluggy.PluginManager(hooks.PROJECT)
     manager.add_hookspecs(hooks)
-    manager.register(module, plugin.name)
-    manager.check_pending()
-    callers = manager.get_hookcallers(module) or []
-    if not callers:
-        raise PluginError("it answers none of circuitlint's hooks; decorate a function with `offers`")
+    callers: dict[str, Any] = {}
+    with guarded(plugin):
+        _check_names(module)
+        manager.register(module, plugin.name)
+        manager.check_pending()
+        callers = {caller.name: caller for caller in manager.get_hookcallers(module) or ()}
+    if not callers and not plugin.failed:
+        plugin.fail("it answers none of circuitlint's hooks; decorate a function with `offers`")
     takers: dict[str, Callable[[Plugin, Any, Gathered], None]] = {
         "circuitlint_load_kinds": _take_kinds,
+        "circuitlint_figures": _take_figures,
         "circuitlint_rules": _take_rules,
+        "circuitlint_reading_rules": _take_reading_rules,
         "circuitlint_rulesets": _take_rulesets,
         "circuitlint_parts": _take_parts,
         "circuitlint_reports": _take_reports,
     }
-    by_name = {caller.name: caller for caller in callers}
     for name, take in takers.items():
-        caller = by_name.get(name)
-        if caller is None:
-            continue
-        with guarded(plugin):
-            for implementation in caller.get_hookimpls():
+        for implementation in callers[name].get_hookimpls() if name in callers else ():
+            with guarded(plugin):
                 take(plugin, implementation.function(), gathered)
 
 
-def _take_rules(plugin: Plugin, offered: Iterable[type[Rule]], gathered: Gathered) -> None:
-    for made in offered:
-        if not (inspect.isclass(made) and issubclass(made, Rule)):
-            raise PluginError(f"circuitlint_rules offers {made!r}, which is not a Rule class")
-        rule = made()
-        for word in ("name", "title", "purpose", "applies_to", "figures", "states", "needs", "helps"):
-            if not hasattr(rule, word):
-                raise PluginError(f"the rule {made.__name__} has no `{word}`")
-        if rule.name in gathered.rules:
-            taken = gathered.rules[rule.name][1].name
-            raise PluginError(f"the rule name {rule.name!r} is taken by {taken}")
-        gathered.rules[rule.name] = (rule, plugin)
-        plugin.offers.append(f"rule {rule.name}")
+def _check_names(module: Any) -> None:
+    """A hook that is misspelt or not decorated would never be asked, so it is refused. Raises PluginError."""
+    known = sorted(name for name in vars(hooks) if name.startswith("circuitlint_"))
+    for name, value in sorted(vars(module).items()) if hasattr(module, "__dict__") else ():
+        if not name.startswith("circuitlint_") or not callable(value) or isinstance(value, (type, ModuleType)):
+            continue
+        if name not in known:
+            close = difflib.get_close_matches(name, known, 1)
+            told = f"did you mean {close[0]!r}?" if close else f"one of {', '.join(known)}"
+            raise PluginError(f"there is no hook {name!r}; accepted: {told}")
+        if not hasattr(value, f"{hooks.PROJECT}_impl"):
+            raise PluginError(f"{name} is not decorated, so nobody would ask it; accepted: `@offers` above it")
 
 
-def _take_rulesets(plugin: Plugin, offered: Iterable[tuple[str, bytes]], gathered: Gathered) -> None:
-    for file, content in offered:
-        try:
-            ruleset = read_ruleset(content, file)
-        except RulesetError as error:
-            raise PluginError(str(error)) from None
-        if ruleset.content.name in gathered.rulesets:
-            raise PluginError(f"the ruleset name {ruleset.content.name!r} is taken")
-        gathered.rulesets[ruleset.content.name] = ruleset
-        plugin.offers.append(f"ruleset {ruleset.content.name}")
+def _take_rules(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    found = gathered.take("rule", {one.name: one for one in taking.rules(offered)}, plugin)
+    gathered.rules.update({name: (GuardedRule(rule), plugin) for name, rule in found.items()})
+    plugin.offers += [f"rule {name}" for name in found]
 
 
-def _take_parts(plugin: Plugin, offered: Iterable[tuple[str, bytes]], gathered: Gathered) -> None:
-    for file, content in offered:
-        gathered.parts.append((file, bytes(content)))
-        plugin.offers.append(f"parts {file}")
+def _take_reading_rules(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    found = gathered.take("rule on readings", {one.name: one for one in taking.reading_rules(offered)}, plugin)
+    gathered.reading_rules.update({name: (rule, plugin) for name, rule in found.items()})
+    plugin.offers += [f"rule on readings {name}" for name in found]
 
 
-def _take_kinds(plugin: Plugin, offered: Iterable[LoadKind[Any]], gathered: Gathered) -> None:
-    for kind in offered:
-        if not isinstance(kind, LoadKind):
-            raise PluginError(f"circuitlint_load_kinds offers {kind!r}, which is not a LoadKind")
-        if kind.name in gathered.kinds or kind.name in ("series", "parallel", "name", "part"):
-            raise PluginError(f"the load kind {kind.name!r} is taken")
-        gathered.kinds[kind.name] = kind
-        plugin.offers.append(f"load kind {kind.name}")
+def _take_rulesets(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    read = taking.rulesets(offered)
+    names = [one.content.name for one in read]
+    if len(set(names)) < len(names):
+        raise PluginError("circuitlint_rulesets offers two rulesets of one name")
+    gathered.rulesets.update(gathered.take("ruleset", dict(zip(names, read, strict=True)), plugin))
+    plugin.offers += [f"ruleset {name}" for name in names]
 
 
-def _take_reports(plugin: Plugin, offered: Any, gathered: Gathered) -> None:
-    for name, render in dict(offered).items():
-        if name in gathered.reports or not callable(render):
-            raise PluginError(f"the report kind {name!r} is taken or cannot be called")
-        gathered.reports[name] = render
-        plugin.offers.append(f"report {name}")
+def _take_parts(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    read = taking.parts(offered, gathered.models())
+    gathered.take("part", {name: file for file, _, names in read for name in names}, plugin)
+    gathered.parts += [(file, content) for file, content, _ in read]
+    plugin.offers += [f"part {name}" for _, _, names in read for name in names]
+
+
+def _take_kinds(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    kinds = {one.name: one for one in taking.load_kinds(offered)}
+    clash = [name for name in kinds if name in CORE]
+    if clash:
+        raise PluginError(f"the load kind name {clash[0]!r} is taken by circuitlint itself")
+    found = gathered.take("load kind", kinds, plugin)
+    gathered.kinds.update({name: GuardedKind(kind, plugin.name, gathered.troubles) for name, kind in found.items()})
+    plugin.offers += [f"load kind {name}" for name in found]
+
+
+def _take_figures(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    added = taking.figures(offered, gathered.kinds)
+    gathered.take("figure", {f"{figure} of {one.of or 'the circuit'}": one for one in added for figure in one.gives}, plugin)
+    gathered.kinds.extras += [GuardedFigures(one, plugin.name, gathered.troubles) for one in added]
+    plugin.offers += [f"figures {one.name}" for one in added]
+
+
+def _take_reports(plugin: Plugin, offered: object, gathered: Gathered) -> None:
+    found = gathered.take("report kind", taking.reports(offered), plugin)
+    gathered.reports.update({name: GuardedReport(name, render, plugin.name) for name, render in found.items()})
+    plugin.offers += [f"report kind {name}" for name in found]

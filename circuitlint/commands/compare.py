@@ -7,6 +7,7 @@ from typing import Any
 
 from circuitlint.commands.job import ruleset_arguments
 from circuitlint.commands.output import colour, columns, put
+from circuitlint.commands.settings import apply_settings
 from circuitlint.commands.stored import record_or_review
 from circuitlint.reports import comparison as reports
 from circuitlint.review.comparison import compare
@@ -30,6 +31,7 @@ def add(commands: Any) -> None:
 
 def _compare(arguments: argparse.Namespace) -> int:
     """Tell what a change did. Ends with status 1 where it brought a finding that holds, else with 0."""
+    apply_settings(arguments)
     before, after = (record_or_review(name, arguments) for name in (arguments.before, arguments.after))
     found = compare(before, after)
     form, _, file = arguments.form.partition("=")

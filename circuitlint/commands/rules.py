@@ -5,8 +5,9 @@ from __future__ import annotations
 import argparse
 from typing import Any
 
-from circuitlint.commands.job import ruleset_arguments, ruleset_of
+from circuitlint.commands.job import ruleset_arguments, ruleset_of, tell_failures
 from circuitlint.commands.output import columns, put
+from circuitlint.commands.settings import apply_settings
 from circuitlint.definition.reading import Installation
 from circuitlint.engine import Review, review
 from circuitlint.errors import InputError
@@ -24,7 +25,9 @@ def add(commands: Any) -> None:
 
 def _rules(arguments: argparse.Namespace) -> int:
     """Print what is checked: each rule of the ruleset with its limits, their sources, and the data it needs."""
+    apply_settings(arguments)
     gathered = gather(arguments.plugin)
+    tell_failures(gathered)
     ruleset = ruleset_of(arguments, gathered)
     made = review(Installation(title=""), ruleset, gathered, Review("never"))
     if arguments.name and arguments.name not in {rule.name for rule in made.rules}:

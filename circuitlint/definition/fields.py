@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Annotated, Any, TypeAlias
 
-from pydantic import BaseModel, BeforeValidator, ConfigDict, GetCoreSchemaHandler, GetJsonSchemaHandler
+from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, GetCoreSchemaHandler, GetJsonSchemaHandler
 from pydantic_core import CoreSchema, PydanticCustomError, core_schema
 
 from circuitlint import si
@@ -63,6 +63,8 @@ Share: TypeAlias = Annotated[Quantity, Read(si.RATIO)]
 ResistancePerLength: TypeAlias = Annotated[Quantity, Read(si.RESISTANCE_PER_LENGTH)]
 CapacitancePerLength: TypeAlias = Annotated[Quantity, Read(si.CAPACITANCE_PER_LENGTH)]
 LetThrough: TypeAlias = Annotated[Quantity, Read(si.LET_THROUGH)]
+
+Count: TypeAlias = Annotated[int, Field(ge=1, le=1000)]
 
 
 def _one_or_many(value: Any) -> Any:

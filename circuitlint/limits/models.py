@@ -70,6 +70,9 @@ class RulesetFile(Setting):
     statement: str = Field(default="", description="The statement that local codes and the responsible person prevail.")
     built_on: str = Field(default="", description="Name of a ruleset whose limits hold where this one is silent.")
     near_the_limit: str = Field(default="", description="Room that counts as close to a limit, as a share of it.")
+    decision_rule: Literal["simple", "guarded"] | None = Field(
+        default=None, description="How readings are held against limits: by the value, or with its uncertainty as a guard band."
+    )
     sources: dict[str, SourceSetting] = Field(default_factory=dict)
     rules: dict[str, RuleSetting] = Field(default_factory=dict)
 
@@ -135,6 +138,7 @@ class Ruleset:
     sha256: str
     rules: dict[str, RuleTerms]
     documents: tuple[tuple[str, str], ...] = ()
+    decision_rule: Literal["simple", "guarded"] = "guarded"
 
 
 Limits: TypeAlias = Mapping[str, Limit]

@@ -6,6 +6,7 @@ import difflib
 import hashlib
 from collections.abc import Mapping
 from dataclasses import dataclass
+from typing import Literal
 
 import yaml
 from pydantic import ValidationError
@@ -90,10 +91,12 @@ def _lay(chain: list[RulesetText]) -> Ruleset:
     rules: dict[str, RuleTerms] = {}
     faults: list[Fault] = []
     statement, near = "", ""
+    decision: Literal["simple", "guarded"] = "guarded"
     for one in reversed(chain):
         content = one.content
         statement = content.statement or statement
         near = content.near_the_limit or near
+        decision = content.decision_rule or decision
         for rule, setting in content.rules.items():
             if setting.left_out:
                 rules.pop(rule, None)
@@ -129,6 +132,7 @@ def _lay(chain: list[RulesetText]) -> Ruleset:
     return Ruleset(
         top.name, top.title, top.edition, top.jurisdiction, statement, read(near or "5 %", si.RATIO).nominal,
         tuple(one.content.name for one in chain[1:]), digest, rules, tuple((one.file, one.sha256) for one in chain),
+        decision,
     )
 
 

@@ -102,6 +102,18 @@ def detuned_capacitor_voltage(*, voltage: Volt, detuning: Ratio) -> Volt:
 
 
 @formula(
+    "h",
+    "1 / √({p})",
+    source=DETUNED,
+    validity="multiple of the fundamental at which reactor and capacitor in series resonate",
+    detuning="p",
+)
+def tuning_order(*, detuning: Ratio) -> Ratio:
+    """h = 1 / √p"""
+    return 1.0 / np.sqrt(detuning)
+
+
+@formula(
     "f0",
     "1 / (2π · √({L} · {C}))",
     source=RESONANCE,

@@ -5,11 +5,18 @@ from __future__ import annotations
 import numpy as np
 
 from circuitlint.physics.formula import formula
-from circuitlint.si import ComplexAmpere, ComplexVolt, Ohm, Ratio, Volt, Watt
+from circuitlint.si import Ampere, ComplexAmpere, ComplexVolt, Ohm, Ratio, Volt, Watt
 from circuitlint.sources import Source
 
 SEPARATION = Source("wattmeter reading less winding loss is core loss", known="common practice")
 CONVERSION = Source("equal impedance of series and parallel form", known="derived")
+
+
+@formula("Rs", "{P} / {I}²", source=SEPARATION, validity="winding and core together, in series form", active_power="P",
+         current="I")
+def series_resistance_of_loss(*, active_power: Watt, current: Ampere) -> Ohm:
+    """Rs = P / I²"""
+    return active_power / current**2
 
 
 @formula("Uc", "|{U} − {I} · {R}|", source=SEPARATION, validity="rms phasors", voltage="U", current="I", resistance="R")

@@ -95,6 +95,20 @@ def current_without_meter(*, current: Ampere, resistance: Ohm, burden: Ohm) -> A
 
 
 @formula(
+    "U",
+    "{Um} − {I} · {Rb}",
+    source=CONNECTION,
+    validity="direct voltage taken ahead of the ammeter",
+    reading="Um",
+    current="I",
+    burden="Rb",
+)
+def voltage_less_burden(*, reading: Volt, current: Ampere, burden: Ohm) -> Volt:
+    """U = Um − I · Rb"""
+    return reading - current * burden
+
+
+@formula(
     "P",
     "{Pm} − {U}² / {Rv}",
     source=CONNECTION,

@@ -272,3 +272,10 @@ def current_of_demand(*, apparent_power: VoltAmpere, voltage: Volt) -> Ampere:
 def starting_demand(*, apparent_power: VoltAmpere, ratio: Ratio) -> VoltAmpere:
     """S = k · S"""
     return ratio * apparent_power
+
+
+@formula("I/Iz", "{I} / {Iz}", source=Source("IEC 60364-4-43", "433.1, current within the ampacity", known="value from memory"),
+         validity="steady current, ampacity corrected for ambient and grouping", current="I", ampacity="Iz")
+def share_of_ampacity(*, current: Ampere, ampacity: Ampere) -> Ratio:
+    """I/Iz = I / Iz"""
+    return current / ampacity

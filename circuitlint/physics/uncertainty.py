@@ -9,6 +9,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from statistics import NormalDist
 from typing import Literal
 
 import numpy as np
@@ -95,6 +96,43 @@ def effective_degrees_of_freedom(contributions: Sequence[float], degrees: Sequen
     total = math.fsum(one**2 for one in contributions) ** 2
     weighted = math.fsum(one**4 / degree for one, degree in zip(contributions, degrees, strict=True))
     return total / weighted if weighted > 0.0 else math.inf
+
+
+def coverage_factor(degrees: float, share: float = 0.95) -> float:
+    """Student's factor that widens a standard uncertainty to hold `share` of the possible values.
+
+    Degrees of freedom that are not whole are cut to the whole number below, as JCGM 100:2008, G.4.1 has it. Raises
+    ValueError for less than one degree of freedom, and for a share that is not between 0 and 1.
+    """
+    if not 0.0 < share < 1.0 or not degrees >= 1.0:
+        raise ValueError("a coverage factor needs a share between 0 and 1 and at least one degree of freedom")
+    if degrees > 1000.0:  # the sum grows long; two terms of Fisher's expansion leave less than 1e-8
+        normal = NormalDist().inv_cdf((1.0 + share) / 2.0)
+        first = (normal**3 + normal) / 4.0
+        second = (5.0 * normal**5 + 16.0 * normal**3 + 3.0 * normal) / 96.0
+        return normal + first / degrees + second / degrees**2
+    whole = math.floor(degrees)
+    low, high = 0.0, math.pi / 2.0
+    for _ in range(60):
+        middle = (low + high) / 2.0
+        low, high = (middle, high) if _within(middle, whole) < share else (low, middle)
+    return math.tan(high) * math.sqrt(whole)
+
+
+def _within(angle: float, degrees: int) -> float:
+    """Share of Student's distribution within ± √degrees · tan(angle): a finite sum for whole degrees of freedom."""
+    square = math.cos(angle) ** 2
+    odd = degrees % 2
+    term, total = (math.cos(angle), 0.0) if odd else (1.0, 0.0)
+    for power in range(2 + odd, degrees + 1, 2):
+        total += term
+        term *= square * (power - 1.0) / power
+    return 2.0 / math.pi * (angle + math.sin(angle) * total) if odd else math.sin(angle) * total
+
+
+def expanded(uncertainty: float, degrees: float = math.inf, share: float = 0.95) -> float:
+    """Half-width that holds `share` of the possible values. Raises as `coverage_factor`. Source: JCGM 100:2008, G.6.4."""
+    return coverage_factor(degrees, share) * uncertainty
 
 
 @dataclass(frozen=True, slots=True)

@@ -101,7 +101,7 @@ def skin_argument(*, frequency: Hertz, shape: Ratio, resistance_per_length: OhmP
     "R~/R",
     "1 + {x}⁴ / (192 + 0.8 · {x}⁴) to 2.8, 0.864 − 0.0177 · {x} + 0.0563 · {x}² to 3.8, 0.267 + 0.354 · {x} beyond",
     source=SKIN,
-    validity="within 0.5 % of the exact solution for a solid round wire",
+    validity="within 0.6 % of the exact solution for a solid round wire",
     argument="x",
 )
 def skin_effect(*, argument: Ratio) -> Ratio:

@@ -10,7 +10,7 @@ from circuitlint.definition.text import Path
 from circuitlint.limits.models import Limit, Occasion, Severity
 from circuitlint.quantity import show, show_range
 from circuitlint.review import record
-from circuitlint.review.rule import Comparison, Fact, Holds, Outcome, Rule, Unknown
+from circuitlint.review.rule import Comparison, Fact, Holds, Outcome, Rule, Unknown, path_of
 from circuitlint.review.worked import worked_line
 from circuitlint.si import RATIO, Dimension
 from circuitlint.study.study import CircuitStudy, Figure
@@ -169,17 +169,6 @@ def _shown(value: float, dimension: Dimension, limit: Limit) -> str:
 
 def _in(state: str) -> str:
     return f" ({state})" if state else ""
-
-
-def path_of(of: str) -> Path:
-    """A part's place as path steps: `load.series[0].coil` to ("load", "series", 0, "coil")."""
-    steps: list[str | int] = []
-    for word in of.split(".") if of else ():
-        name, _, index = word.partition("[")
-        steps.append(name)
-        if index:
-            steps.append(int(index.rstrip("]")))
-    return tuple(steps)
 
 
 def place_of(circuit: CircuitStudy, at: Path) -> record.Place:

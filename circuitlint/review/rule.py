@@ -106,6 +106,17 @@ def share_of(limit: Limit | None, quantity: Quantity | None, set_by: str) -> Lim
     return replace(limit, quantity=made, set_by=f"{limit.set_by}, {set_by}")
 
 
+def path_of(of: str) -> Path:
+    """A part's place as path steps: `load.series[0].coil` to ("load", "series", 0, "coil")."""
+    steps: list[str | int] = []
+    for word in of.split(".") if of else ():
+        name, _, index = word.partition("[")
+        steps.append(name)
+        if index:
+            steps.append(int(index.rstrip("]")))
+    return tuple(steps)
+
+
 class Rule(ABC):
     """Base of every rule. Class attributes say what the rule is; `check` yields what is to be compared.
 

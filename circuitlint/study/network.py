@@ -305,8 +305,9 @@ def _cable_figures(plan: Plan, place: str, current: Key) -> None:
     factor = put("ambient-factor", place, conductor_heating.ambient_factor,
                  ambient=plan.datum(f"{place}.ambient"), highest_temperature=plan.datum(f"{place}.highest_temperature"),
                  reference_ambient=plan.datum(f"{place}.reference_ambient"))
-    put("ampacity", place, conductor_heating.corrected_ampacity, tabled=plan.datum(f"{place}.tabled_ampacity"),
+    corrected = put("ampacity", place, conductor_heating.corrected_ampacity, tabled=plan.datum(f"{place}.tabled_ampacity"),
         ambient_factor=factor, grouping_factor=plan.datum(f"{place}.grouping_factor"))
+    put("ampacity-share", place, steps.share_of_ampacity, current=flow, ampacity=corrected)
     warm = put("conductor-temperature", place, conductor_heating.conductor_temperature, current=flow, ampacity=carried,
                ambient=plan.datum(f"{place}.ambient"), highest_temperature=plan.datum(f"{place}.highest_temperature"),
                reference_ambient=plan.datum(f"{place}.reference_ambient"),

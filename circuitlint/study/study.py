@@ -16,7 +16,7 @@ from circuitlint.definition.reading import CircuitDefinition
 from circuitlint.definition.text import Path
 from circuitlint.physics.formula import Formula
 from circuitlint.si import Dimension, RealArray
-from circuitlint.study.data import DataSheet
+from circuitlint.study.data import DataSheet, Datum
 from circuitlint.study.feeding import BoardState, Feed
 from circuitlint.study.plan import Node
 from circuitlint.study.solving import Solution
@@ -97,6 +97,35 @@ class CircuitStudy:
             return Lack((), f"{name.replace('-', ' ')} does not come out as a finite number in every case")
         return self._figure(solution, row)
 
+    def leaves(self, kind: str) -> tuple[str, ...]:
+        """Places of every load of a kind, in the order of the tree."""
+        return tuple(_leaves(self.tree, kind))
+
+    def choice(self, path: str) -> str:
+        """A choice the definition makes under a path, such as `made_for` of a coil; empty where it makes none."""
+        return self.data.tokens.get(path, "")
+
+    def stated(self, path: str) -> Datum | None:
+        """A quantity that the definition states under a path within the circuit; None where it does not."""
+        datum = self.data.data.get(path)
+        return datum if datum is not None and datum.origin == "stated" else None
+
+    def made_from(self, place: str, state: str = "cold") -> frozenset[str]:
+        """Paths of the data that a part's impedance was made from in a state."""
+        solution = self.solutions.get(state)
+        if solution is None:
+            return frozenset()
+        waiting, seen = [Key("impedance phasor", place)], set()
+        while waiting:
+            key = waiting.pop()
+            if key in seen:
+                continue
+            seen.add(key)
+            line = solution.sheet.index.get(key)
+            for argument in line.arguments.values() if line is not None else ():
+                waiting += [argument] if isinstance(argument, Key) else argument
+        return frozenset(key.of for key in seen if not key.name)
+
     def parts(self, name: str, state: str) -> tuple[str, ...]:
         """Parts that have a figure of that name in that state, given or lacking, in the order of the calculation."""
         solution = self.solutions.get(state)
@@ -169,6 +198,13 @@ class CircuitStudy:
         solution = self.solutions[state]
         row: RealArray = np.broadcast_to(np.asarray(solution.values[key]), (solution.circuits, solution.points))[self.position]
         return row
+
+
+def _leaves(node: Node, kind: str) -> Iterable[str]:
+    if node.kind == kind:
+        yield node.place
+    for one in node.nodes:
+        yield from _leaves(one, kind)
 
 
 def leads_or_lags(reactive: float) -> str:

@@ -4,16 +4,26 @@ from __future__ import annotations
 
 from importlib.resources import files
 
-from circuitlint.authoring import Rule, offers
-from circuitlint_rules.conductor import ConductorHeating
+from circuitlint.authoring import ReadingRule, Rule, offers
+from circuitlint_rules.conductor import ConductorCurrent, ConductorHeating
 from circuitlint_rules.measurement import MeterRange
+from circuitlint_rules.plate import NameplateContradiction, SupplyMatch
+from circuitlint_rules.readings import CalibrationInDate, CategoryStated, WithinRange
 from circuitlint_rules.supply import MinimumPowerFactor, VoltageDrop
 
 
 @offers
 def circuitlint_rules() -> list[type[Rule]]:
     """The common rules."""
-    return [MinimumPowerFactor, MeterRange, ConductorHeating, VoltageDrop]
+    return [
+        MinimumPowerFactor, MeterRange, ConductorHeating, ConductorCurrent, VoltageDrop, SupplyMatch, NameplateContradiction,
+    ]
+
+
+@offers
+def circuitlint_reading_rules() -> list[type[ReadingRule]]:
+    """The common rules on readings."""
+    return [CalibrationInDate, CategoryStated, WithinRange]
 
 
 @offers

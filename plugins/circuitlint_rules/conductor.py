@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from circuitlint.authoring import (
     LOSS_PER_LENGTH,
+    RATIO,
     TEMPERATURE,
     CircuitStudy,
     Limits,
@@ -52,3 +53,29 @@ class ConductorHeating(Rule):
                 limit = limits.get(run.insulation.replace("-", "_"))
                 yield at_most(ask(circuit, "conductor-temperature", "steady", place), limit)
             yield at_most(ask(circuit, "loss-per-metre", "steady", place), limits.get("loss_per_metre"))
+
+
+class ConductorCurrent(Rule):
+    """The steady current of each run against its ampacity, corrected for ambient and grouping."""
+
+    name = "conductor-current"
+    title = "Current within the ampacity"
+    purpose = "A conductor that carries more than its corrected ampacity runs hotter than its insulation is made for."
+    applies_to = "every circuit with a cable"
+    figures = ("ampacity-share",)
+    states = ("steady",)
+    needs = ("insulation", "method", "ambient", "grouped_circuits", "section", "the load's heat data")
+    helps = "a larger section, fewer circuits bunched together, or a cooler way"
+    limits = {"share_of_ampacity": LimitSpec(RATIO, "largest steady current as a share of the corrected ampacity")}
+
+    def applies(self, circuit: CircuitStudy) -> bool:
+        """Where there is a cable, or where nothing is said of one."""
+        return circuit.entry.cable is None or len(circuit.entry.cable) > 0
+
+    def check(self, circuit: CircuitStudy, limits: Limits) -> Iterator[Outcome]:
+        """Each run."""
+        if circuit.entry.cable is None:
+            yield Unknown("ampacity-share", ("cable, or `cable: []` where there is none",), state="steady")
+            return
+        for index in range(len(circuit.entry.cable)):
+            yield at_most(ask(circuit, "ampacity-share", "steady", f"cable[{index}]"), limits.get("share_of_ampacity"))

@@ -70,6 +70,7 @@ def _circuit(number: int, draw: random.Random) -> Iterator[str]:
 def _load(draw: random.Random, resistance: float, inductance: float, direct: bool, volts: float) -> Iterator[str]:
     shape = "alone" if direct else draw.choices(("alone", "series", "compensated"), weights=(6, 2, 2))[0]
     coil = (
+        f"made_for: {'direct' if direct else 'alternating'} current",
         f"resistance: {resistance:.4g} ohm ± {draw.choice(_TOLERANCES)} %",
         f"inductance: {1e3 * inductance:.4g} mH ± {draw.choice(_TOLERANCES)} %",
         "open_gap:",

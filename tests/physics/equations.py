@@ -118,13 +118,13 @@ class _Reader:
         if kind == "symbol":
             value = self.symbols[word[1:-1]]
             return np.array(value) if isinstance(value, tuple) else value
-        if word == "max":
+        if word in ("max", "min"):
             self._want("(")
             one = self._sum()
             self._want(",")
             other = self._sum()
             self._want(")")
-            return np.maximum(one, other)
+            return np.maximum(one, other) if word == "max" else np.minimum(one, other)
         if word == "Σ":
             return np.sum(self._power())
         if word in FUNCTIONS:

@@ -16,7 +16,14 @@ from scipy.optimize import brentq
 from circuitlint.physics.coil_saturation import flux_linkage, saturated_energy, slope_inductance
 from circuitlint.physics.conductor_warming import temperature_after
 from circuitlint.physics.resistor_capacitor import capacitor_peak
-from circuitlint.physics.switching_off import clamp_energy, clamped_decay, release_time
+from circuitlint.physics.switching_off import (
+    clamp_energy,
+    clamped_decay,
+    peak_with_resistor,
+    release_time,
+    time_constant_with_resistor,
+    unsuppressed_peak,
+)
 from circuitlint.physics.switching_on import (
     current_build_up,
     current_decay,
@@ -71,6 +78,18 @@ def swept_peak(ratio: float) -> float:
     return float(np.abs(currents).max()) * math.hypot(ratio * reactance, reactance) / math.sqrt(2.0)
 
 
+# Crest factors found by a search of all closing angles, four decimals (derived).
+CRESTS = {
+    0.0: 2.0, 0.02: 1.9395, 0.05: 1.8566, 0.1: 1.7368, 0.2: 1.5503, 0.3: 1.4151, 0.5: 1.2418, 0.8: 1.1126, 1.0: 1.0694,
+    2.0: 1.0078, 5.0: 1.0,
+}  # fmt: skip
+
+
+@pytest.mark.parametrize("ratio", CRESTS)
+def test_crest_factors_are_the_tabled_ones(ratio: float) -> None:
+    assert float(switch_on_factor(resistance=ratio, reactance=1.0)) == pytest.approx(CRESTS[ratio], abs=0.5e-4 * (1.0 + 1e-9))
+
+
 @pytest.mark.parametrize("ratio", [1e-6, 0.02, 0.1, 0.3, 0.66, 1.0, 2.0, 5.0, 20.0])
 def test_no_closing_angle_gives_a_higher_crest_and_one_gives_it(ratio: float) -> None:
     factor = float(switch_on_factor(resistance=ratio, reactance=1.0))
@@ -103,17 +122,43 @@ def test_the_crest_factor_depends_on_the_ratio_alone_and_lies_between_one_and_tw
 CLAMP, OPENING = 25.0, 0.5
 
 
-def clamped(time: float, current: Any) -> Any:
-    return (-RESISTANCE * current - CLAMP) / INDUCTANCE
-
-
-def test_decay_against_a_clamp_follows_the_integrator_and_stops_at_zero() -> None:
-    end = INDUCTANCE / RESISTANCE * math.log1p(OPENING * RESISTANCE / CLAMP)
+# Forward voltage of a diode, a diode with a Zener diode, a varistor at the current of opening.
+@pytest.mark.parametrize("clamp", [0.8, CLAMP, 68.0])
+def test_decay_against_a_clamp_follows_the_integrator_and_stops_at_zero(clamp: float) -> None:
+    end = INDUCTANCE / RESISTANCE * math.log1p(OPENING * RESISTANCE / clamp)
     times = np.linspace(0.0, end, 50)
-    closed = clamped_decay(time=times, current=OPENING, clamp_voltage=CLAMP, inductance=INDUCTANCE, resistance=RESISTANCE)
-    assert closed == pytest.approx(integrated(clamped, [OPENING], times), abs=1e-9)
-    later = clamped_decay(time=2.0 * end, current=OPENING, clamp_voltage=CLAMP, inductance=INDUCTANCE, resistance=RESISTANCE)
+    closed = clamped_decay(time=times, current=OPENING, clamp_voltage=clamp, inductance=INDUCTANCE, resistance=RESISTANCE)
+    numeric = integrated(lambda t, i: (-RESISTANCE * i - clamp) / INDUCTANCE, [OPENING], times)
+    assert closed == pytest.approx(numeric, abs=1e-9)
+    later = clamped_decay(time=2.0 * end, current=OPENING, clamp_voltage=clamp, inductance=INDUCTANCE, resistance=RESISTANCE)
     assert later == 0.0
+
+
+def test_decay_through_a_resistor_follows_the_integrator_and_starts_at_the_peak() -> None:
+    parallel = 100.0
+    constant = time_constant_with_resistor(inductance=INDUCTANCE, resistance=RESISTANCE, parallel_resistance=parallel)
+    closed = current_decay(time=TIMES, initial=OPENING, time_constant=constant)
+    numeric = integrated(lambda t, i: -(RESISTANCE + parallel) * i / INDUCTANCE, [OPENING], TIMES)
+    assert closed == pytest.approx(numeric, abs=1e-9)
+    peak = float(peak_with_resistor(supply=VOLTAGE, current=OPENING, parallel_resistance=parallel))
+    assert peak == pytest.approx(VOLTAGE + parallel * numeric.max(), rel=1e-9)
+    release = release_time(
+        current=OPENING, drop_out_current=0.1, clamp_voltage=0.0, inductance=INDUCTANCE, resistance=RESISTANCE + parallel
+    )
+    assert math.exp(np.interp(float(release), TIMES, np.log(numeric))) == pytest.approx(0.1, rel=1e-6)
+
+
+def test_without_suppressor_the_stray_capacitance_alone_sets_the_crest() -> None:
+    capacitance, count = 2e-9, 4001
+    quarter = math.pi / 2.0 * math.sqrt(INDUCTANCE * capacitance)
+
+    def slope(time: float, state: Any) -> Any:
+        voltage, current = state
+        return [current / capacitance, -voltage / INDUCTANCE]
+
+    crest = integrated(slope, [0.0, OPENING], np.linspace(0.0, 2.0 * quarter, count)).max()
+    bound = float(unsuppressed_peak(current=OPENING, inductance=INDUCTANCE, stray_capacitance=capacitance))
+    assert crest == pytest.approx(bound, rel=1e-6)
 
 
 @given(st.floats(0.01, 0.49), st.floats(0.5, 500.0), st.floats(0.001, 5.0), st.floats(0.1, 500.0))

@@ -7,13 +7,18 @@ import math
 import numpy as np
 import pytest
 import uncertainties  # type: ignore[import-untyped]
+from hypothesis import given
+from hypothesis import strategies as st
+from scipy.stats import t as student
 from uncertainties import umath
 
 from circuitlint.physics.uncertainty import (
     Estimates,
     acceptance_limit,
+    coverage_factor,
     decide,
     effective_degrees_of_freedom,
+    expanded,
     monte_carlo,
     propagate,
     rectangular,
@@ -109,6 +114,45 @@ def test_effective_degrees_of_freedom_follow_the_smallest_and_the_largest_case()
 def test_the_end_gauge_of_the_gum_has_sixteen_degrees_of_freedom() -> None:
     # JCGM 100:2008, annex H.1 (value from memory): contributions in nm 25, 9.7, 2.9, 16.6 with 18, 25.6, 50, 2 degrees.
     assert effective_degrees_of_freedom([25.0, 9.7, 2.9, 16.6], [18.0, 25.6, 50.0, 2.0]) == pytest.approx(16.7, abs=0.5)
+
+
+# JCGM 100:2008, table G.2 (value from memory): Student's factors for 90, 95, 95.45 and 99 %.
+@pytest.mark.parametrize(
+    ("degrees", "factors"),
+    [
+        (1.0, [6.31, 12.71, 13.97, 63.66]),
+        (4.0, [2.13, 2.78, 2.87, 4.60]),
+        (10.0, [1.81, 2.23, 2.28, 3.17]),
+        (16.0, [1.75, 2.12, 2.17, 2.92]),
+        (50.0, [1.68, 2.01, 2.05, 2.68]),
+        (math.inf, [1.645, 1.960, 2.000, 2.576]),
+    ],
+)
+def test_coverage_factors_are_those_of_the_gum(degrees: float, factors: list[float]) -> None:
+    found = [coverage_factor(degrees, share) for share in (0.90, 0.95, 0.9545, 0.99)]
+    assert found == pytest.approx(factors, abs=0.00501)
+
+
+@given(st.integers(1, 100_000), st.floats(0.01, 0.9999))
+def test_coverage_factors_agree_with_scipy(degrees: int, share: float) -> None:
+    theirs = float(student.ppf((1.0 + share) / 2.0, degrees))
+    assert coverage_factor(float(degrees), share) == pytest.approx(theirs, rel=1e-6)
+
+
+def test_degrees_of_freedom_are_cut_to_whole_ones() -> None:
+    assert coverage_factor(16.7) == coverage_factor(16.0) > coverage_factor(17.0)
+
+
+def test_the_expanded_uncertainty_of_the_end_gauge_is_the_one_printed() -> None:
+    # JCGM 100:2008, annex H.1 (value from memory): 32 nm with 16 degrees of freedom make 93 nm at 99 %.
+    assert expanded(32.0, 16.0, 0.99) == pytest.approx(93.0, abs=0.5)
+    assert expanded(1.0) == pytest.approx(1.96, abs=0.005)
+
+
+@pytest.mark.parametrize(("degrees", "share"), [(0.5, 0.95), (math.nan, 0.95), (4.0, 0.0), (4.0, 1.0), (4.0, math.nan)])
+def test_a_coverage_that_cannot_be_is_refused(degrees: float, share: float) -> None:
+    with pytest.raises(ValueError, match="at least one degree of freedom"):
+        coverage_factor(degrees, share)
 
 
 def four(shape: str, trials: int = 400_000) -> tuple[float, tuple[float, float]]:

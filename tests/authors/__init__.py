@@ -1,0 +1,1 @@
+"""What DEVELOPERS.md tells authors to do, done."""

@@ -1,0 +1,1 @@
+"""Tests of plugins: found, loaded, kept apart."""

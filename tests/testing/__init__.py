@@ -1,0 +1,1 @@
+"""The kit with which authors test their rules."""
