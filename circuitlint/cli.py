@@ -12,12 +12,12 @@ import sys
 from collections.abc import Callable, Sequence
 
 import circuitlint
-from circuitlint.commands import compare, figures, plugins, readings, report, review, rules, schema, test_sheet
+from circuitlint.commands import begin, compare, figures, plugins, readings, report, review, rules, schema, test_sheet
 from circuitlint.errors import CircuitlintError, InputError
 from circuitlint.isolation.containment import keyboard_heeded
 
 NOTHING_HELD, AT_FAULT, FAILED = 0, 2, 3
-COMMANDS = (review, figures, rules, compare, test_sheet, readings, report, plugins, schema)
+COMMANDS = (begin, review, figures, rules, compare, test_sheet, readings, report, plugins, schema)
 """In the order of the help."""
 
 

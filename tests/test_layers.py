@@ -38,7 +38,7 @@ STAIRCASE: tuple[tuple[str, ...], ...] = (
     ("circuitlint.promises",),
     ("circuitlint.testing",),
     ("circuitlint.reports",),
-    ("circuitlint.demo",),
+    ("circuitlint.demo", "circuitlint.starting"),
     ("circuitlint.commands.output", "circuitlint.commands.settings", "circuitlint.commands.job", "circuitlint.commands.stored"),
     ("circuitlint.commands",),
     ("circuitlint.cli",),

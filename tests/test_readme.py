@@ -16,6 +16,8 @@ from tests.documents import ROOT, Block, DocumentError, agrees, blocks, command,
 DOCUMENTS = ("README.md", "DEVELOPERS.md")
 # Commands that set something up or run the whole suite: .ci/run runs each of these, by name, out of the document.
 RUN_BY_CI = {"README.md": {"demo", "tests"}, "DEVELOPERS.md": {"develop", "check", "benchmarks"}}
+# Commands that need an environment of their own: tests/authors/test_walk.py runs them.
+RUN_BY_WALK = {"README.md": set[str](), "DEVELOPERS.md": {"walk"}}
 
 
 def run(line: str, folder: Path) -> subprocess.CompletedProcess[str]:
@@ -89,7 +91,7 @@ def test_the_blocks_of_a_document_run_in_order_and_print_what_it_shows(document:
             target.write_text(each.text, encoding="utf-8")
         elif each.kind == "output" and each.name in printed and not agrees(each.text, printed[each.name]):
             wrong.append(f"{document}, line {each.line}: the real output is\n{printed[each.name]}")
-        elif each.kind in ("command", "run") and each.name not in RUN_BY_CI[document]:
+        elif each.kind in ("command", "run") and each.name not in RUN_BY_CI[document] | RUN_BY_WALK[document]:
             printed[each.name] = ""
             for line in _lines_to_run(each, tmp_path):
                 done = run(line, tmp_path)

@@ -56,7 +56,9 @@ def _readings(arguments: argparse.Namespace) -> int:
     known = predictions(job.installation, made)
     readings = read_readings(contents, {tag: parts_of(one) for tag, one in known.items()})
     rules = [(rule, plugin.name) for rule, plugin in job.gathered.reading_rules.values()]
-    held = hold(readings, job.installation, made, Options(arguments.decision_rule or job.ruleset.decision_rule, rules=rules))
+    failed = [(plugin.name, plugin.failed) for plugin in job.gathered.plugins if plugin.failed]
+    decision = arguments.decision_rule or job.ruleset.decision_rule
+    held = hold(readings, job.installation, made, Options(decision, rules=rules, failed=failed))
     for kind, file in wanted:
         if kind == "text":
             put(text.render(held, width=arguments.width or columns()), file)

@@ -14,8 +14,8 @@ from circuitlint.reports import kinds as reports
 def add(commands: Any) -> None:
     """Add the command to the parser."""
     one = commands.add_parser("report", help="any report from a stored record", description=_report.__doc__)
-    one.add_argument("record", metavar="RECORD", help="a record, as `review --report json=RECORD` writes it; - for standard input")
-    one.add_argument("--as", dest="kind", metavar="KIND[=FILE]", default="text", help="text, json, sarif, html or a plugin's kind")
+    one.add_argument("record", metavar="RECORD", help="a record, as `review --report json=RECORD` writes it, or -")
+    one.add_argument("--as", dest="kind", metavar="KIND[=FILE]", default="text", help="a report kind")
     one.add_argument("--plugin", action="append", default=[], metavar="PATH")
     one.add_argument("--width", type=int, default=0, help="columns of the text report")
     one.set_defaults(command=_report)

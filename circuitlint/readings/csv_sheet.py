@@ -53,6 +53,8 @@ def read(content: bytes, file: str) -> Sheet:
         return sheet
     separator = ";" if decoded.split("\n", 1)[0].count(";") > decoded.split("\n", 1)[0].count(",") else ","
     rows = [row for row in _rows(decoded, separator, text) if any(cell.value for cell in row) and row[0].value[:1] != "#"]
+    if text.faults:
+        return sheet
     if not rows:
         text.faults.append(Fault(file, 1, 1, "the file is empty", f"a first line with {', '.join(NEEDED)}"))
         return sheet

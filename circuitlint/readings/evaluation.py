@@ -13,7 +13,7 @@ from circuitlint.errors import OutOfTable
 from circuitlint.readings import gathering
 from circuitlint.readings import record as r
 from circuitlint.readings.judgement import agreement, deviation
-from circuitlint.readings.methods import REFERENCE, Method, method_for
+from circuitlint.readings.methods import Method, method_for
 from circuitlint.readings.models import QUANTITIES, Instrument, ReadingEntry
 from circuitlint.readings.prediction import Prediction
 from circuitlint.readings.propagation import SEED, SHARE, TRIALS, Contribution, InputSet, Outcome, Outcomes, evaluate
@@ -31,6 +31,7 @@ DIMENSION_OF = {
     "core-conductance": si.CONDUCTANCE, "voltage-drop-share": si.RATIO,
 }
 """Dimension of every result."""
+ONE_PHASE = "three phases loaded alike: voltage to the star point, current and power of one phase are meant"
 HOT = ("steady", "stuck-open", "other-frequency")
 
 
@@ -75,13 +76,16 @@ def evaluate_one(
         _rename(made.inputs, "inductance", "bridge_inductance")
     zero = _zero(prediction, place)
     if "temperature" in values and "resistance" in values:
-        _copy(made.inputs, "temperature", "winding_temperature")
+        # The temperature a method takes in is no result of its own.
+        _rename(made.inputs, "temperature", "winding_temperature")
     if zero is not None:
         values["inferred_zero"] = zero
     _borrow(one, place, zero, lent, made, direct, reading)
     method = method_for(set(values), direct, one.voltmeter == "ahead of the ammeter")
     outcomes = evaluate(method.model, made.inputs, seed, trials)
     notes = [*made.notes, *method.notes]
+    if prediction.circuit.system == "three-phase":
+        notes.append(ONE_PHASE)
     result = _result(reading, prediction, place, made, method, outcomes, notes)
     return Evaluated(reading, place, made.inputs, method, outcomes, notes, result, made.used,
                      *_meters(one, instruments))
@@ -154,17 +158,14 @@ def _lend(inputs: InputSet, name: str, value: float, uncertainty: float) -> None
 
 
 def _rename(inputs: InputSet, old: str, new: str) -> None:
-    inputs.values = {new if name == old else name: value for name, value in inputs.values.items()}
+    renamed = {new if name == old else name: value for name, value in inputs.values.items()}
+    inputs.values.clear()
+    inputs.values.update(renamed)
     inputs.contributions = [Contribution(new if one.name == old else one.name, one.half, one.why, one.normal)
                             for one in inputs.contributions]
     inputs.groups = [type(one)(tuple(new if name == old else name for name in one.names), one.covariance, one.degrees)
                      for one in inputs.groups]
     inputs.unknown = {new if name == old else name for name in inputs.unknown}
-
-
-def _copy(inputs: InputSet, old: str, new: str) -> None:
-    """The same temperature under the name a method knows it by; it is then no result of its own."""
-    _rename(inputs, old, new)
 
 
 def _zero(prediction: Prediction, place: str) -> float | None:
@@ -260,7 +261,3 @@ def _inputs(reading: Reading, made: gathering.Gathered) -> list[r.InputRead]:
             place=Place(file=spot.file, line=spot.line, column=spot.column, path=f"readings[{reading.index}].{name}"),
         ))
     return found
-
-
-REFERENCE_TEMPERATURE = REFERENCE
-"""To which resistances are brought, in °C."""

@@ -29,6 +29,8 @@ class Options:
     seed: int = SEED
     trials: int = TRIALS
     rules: Sequence[tuple[ReadingRule, str]] = field(default_factory=tuple)
+    failed: Sequence[tuple[str, str]] = field(default_factory=tuple)
+    """Plugins that failed, with why: what they would have noticed is not known."""
 
 
 def hold(readings: Readings, installation: Installation, record: Record, options: Options | None = None) -> r.ReadingsRecord:
@@ -147,8 +149,9 @@ def _remarks(found: Sequence[Evaluated], readings: Readings, options: Options) -
             except BaseException as error:
                 what = f"{type(error).__name__}: {error}"
                 problems.setdefault((plugin, rule.name, what), []).append(one.result.tag)
-    made = [Problem(plugin=plugin, rule=name, what=what, circuits=tuple(dict.fromkeys(tags)))
-            for (plugin, name, what), tags in problems.items()]
+    made = [Problem(plugin=plugin, rule="", what=f"the plugin failed: {what}") for plugin, what in options.failed]
+    made += [Problem(plugin=plugin, rule=name, what=what, circuits=tuple(dict.fromkeys(tags)))
+             for (plugin, name, what), tags in problems.items()]
     return remarks, made
 
 

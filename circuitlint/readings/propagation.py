@@ -21,6 +21,8 @@ MONTE_CARLO = Source("JCGM 101", "6.4.2, 6.4.9 and 7, distributions drawn and qu
 SEED = 101
 TRIALS = 40_000
 SHARE = 0.95
+NEAR = 0.1
+"""Share of the standard uncertainty by which ends of intervals may differ and still agree."""
 MANY = 1e5
 """Degrees of freedom that are as good as infinite."""
 MOST_LOST = 0.01
@@ -120,8 +122,9 @@ def evaluate(model: Model, inputs: InputSet, seed: int = SEED, trials: int = TRI
     """Results of a model with their uncertainties. `model` takes and gives arrays by name and must hold for arrays.
 
     The interval stated is that of Monte Carlo (probabilistically symmetric), since rectangular contributions and curved
-    models are then treated as they are; the first-order one stands where sampling lost trials. Effective degrees of freedom
-    are given where both agree, since only then is the result nearly linear in independent contributions.
+    models are then treated as they are; where sampling lost trials no interval is stated. Effective degrees of freedom are
+    given where the sampled interval lies evenly about the value, since only a result that is nearly linear in independent
+    contributions has them.
     Sources: JCGM 100:2008; JCGM 101:2008.
     """
     at = {name: np.asarray([value]) for name, value in inputs.values.items()}
@@ -192,13 +195,23 @@ def _outcome(
     if not finite or lost > MOST_LOST:
         return Outcome(value, uncertainty, None, math.nan, math.nan, "", None, False, lost, ranked)
     low, high = (float(one) for one in np.quantile(kept, [(1.0 - share) / 2.0, (1.0 + share) / 2.0]))
-    # JCGM 101, 8: half a unit in the second digit of the standard uncertainty; doubled, since quantiles of so few trials scatter.
-    near = 0.1 * uncertainty
+    # JCGM 101, 8.1: ends that differ by no more than one digit of a standard uncertainty told with one; and what chance adds.
+    near = NEAR * uncertainty + 3.0 * _scatter(kept, share)
     agree = abs(value - half - low) <= near and abs(value + half - high) <= near
+    linear = abs((low + high) / 2.0 - value) <= near
     heavy = any(group.degrees <= 2 for group in inputs.groups)
     spread = None if heavy else float(kept.std(ddof=1))
-    return Outcome(value, uncertainty, degrees if agree and degrees < MANY else None, low, high,
+    return Outcome(value, uncertainty, degrees if linear and degrees < MANY else None, low, high,
                    "Monte Carlo, probabilistically symmetric", spread, agree, lost, ranked)
+
+
+def _scatter(kept: RealArray, share: float) -> float:
+    """Standard error of the ends of the interval, from the density of the draws about them."""
+    tail = (1.0 - share) / 2.0
+    step = tail / 5.0
+    inner, outer, first, last = np.quantile(kept, [tail + step, tail - step, 1.0 - tail - step, 1.0 - tail + step])
+    width = max(float(inner - outer), float(last - first)) / (2.0 * step)
+    return width * math.sqrt(tail * (1.0 - tail) / len(kept))
 
 
 def _parts(column: RealArray, inputs: InputSet) -> list[tuple[str, float, float]]:

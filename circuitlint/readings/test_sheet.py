@@ -15,6 +15,7 @@ import circuitlint
 from circuitlint import si
 from circuitlint.definition.reading import Installation
 from circuitlint.quantity import show
+from circuitlint.readings.evaluation import ONE_PHASE
 from circuitlint.readings.models import QUANTITIES
 from circuitlint.readings.prediction import CIRCUIT, Prediction, predictions
 from circuitlint.review.record import Document, Part, Record
@@ -79,6 +80,8 @@ def make(installation: Installation, record: Record) -> TestSheet:
 def _circuit(prediction: Prediction, record: Record) -> SheetCircuit:
     circuit = prediction.circuit
     cautions = [record.cautions[key] for key in circuit.cautions if key in record.cautions]
+    if circuit.system == "three-phase":
+        cautions.append(f"{ONE_PHASE[0].upper()}{ONE_PHASE[1:]}.")
     return SheetCircuit(tag=circuit.tag, serves=circuit.serves, fed_from=circuit.fed_from, cautions=tuple(cautions),
                         lines=tuple(_lines(prediction)))
 

@@ -130,8 +130,8 @@ def _idea(number: int, one: Explanation) -> str:
     return (
         f'<div class="idea"><h4>{number}. {title}</h4><p>{what}; '
         f"{escape(one.amount)} fits best. Weight {one.weight:.2g} of the best.</p>{table(f'Evidence on {name}', head, rows)}"
-        f'<p class="quiet">To settle it: {escape(one.check)}. Distances are in standard uncertainties u of reading and expectation '
-        "together.</p></div>"
+        f'<p class="quiet">To settle it: {escape(one.check)}. Distances are in standard uncertainties u of reading and '
+        "expectation together.</p></div>"
     )
 
 

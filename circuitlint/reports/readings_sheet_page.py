@@ -32,6 +32,7 @@ def _circuit(circuit: SheetCircuit, first: bool) -> str:
     return (
         f'<section class="circuit{" first" if first else ""}"><h2>{escape(circuit.tag)}<small>{escape(circuit.serves)}; fed from '
         f"{escape(circuit.fed_from)}</small></h2>"
-        + (f'<ul class="notes before">{cautions}</ul>' if cautions else "") + table(f"Readings of {circuit.tag}", HEAD, rows, "sheet")
+        + (f'<ul class="notes before">{cautions}</ul>' if cautions else "")
+        + table(f"Readings of {circuit.tag}", HEAD, rows, "sheet")
         + signatures(("Read by", "Seen by")) + "</section>"
     )

@@ -30,6 +30,14 @@ def what_of(key: Key) -> str:
     return f"{name} of {key.of}" if key.of else name
 
 
+def told_of(circuit: CircuitStudy, key: Key) -> str:
+    """A key in words, with its source where the definition does not state it: a table, or what has to be assumed."""
+    datum = circuit.data.data.get(key.of) if not key.name else None
+    if datum is None or datum.source is None:
+        return what_of(key)
+    return f"{key.of} ({'assumed: ' if datum.origin == 'assumed' and not datum.exact else ''}{datum.source})"
+
+
 def inputs_of(circuit: CircuitStudy, figure: Figure) -> tuple[Input, ...]:
     """The numbers put into a figure's formula, at nominal values."""
     made = []
@@ -38,9 +46,9 @@ def inputs_of(circuit: CircuitStudy, figure: Figure) -> tuple[Input, ...]:
         dimension = dimension_of(circuit, figure.state, key).name
         if isinstance(value, complex):
             made.append(Input(symbol=symbol, value=abs(value), angle=cmath.phase(value), dimension=dimension,
-                              what=what_of(key)))
+                              what=told_of(circuit, key)))
         else:
-            made.append(Input(symbol=symbol, value=value, dimension=dimension, what=what_of(key)))
+            made.append(Input(symbol=symbol, value=value, dimension=dimension, what=told_of(circuit, key)))
     return tuple(made)
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import statistics
 
 import numpy as np
 import pytest
@@ -14,6 +15,7 @@ from uncertainties import umath
 
 from circuitlint.physics.uncertainty import (
     Estimates,
+    Sampled,
     acceptance_limit,
     coverage_factor,
     decide,
@@ -95,6 +97,7 @@ def test_one_quantity_and_an_input_without_doubt_are_taken() -> None:
     assert alone.uncertainties == pytest.approx([1.0 / math.sqrt(3.0)])
     exact = Estimates(np.array([2.0, 0.0]), np.array([0.1, 0.0]), np.eye(2))
     assert propagate(lambda at: at[0] + 5.0 * at[1], exact).uncertainties == pytest.approx([0.1])
+    assert type_a([[1.0], [2.0]]).uncertainties == pytest.approx([0.5])
     with pytest.raises(ValueError, match="at least two"):
         type_a([[1.0, 2.0]])
 
@@ -109,6 +112,7 @@ def test_effective_degrees_of_freedom_follow_the_smallest_and_the_largest_case()
     assert effective_degrees_of_freedom([1.0, 1.0], [4.0, 4.0]) == pytest.approx(8.0)
     assert effective_degrees_of_freedom([1.0, 1.0], [4.0, math.inf]) == pytest.approx(16.0)
     assert effective_degrees_of_freedom([1.0], [math.inf]) == math.inf
+    assert effective_degrees_of_freedom([1e-4, 1e-4], [4.0, 4.0]) == pytest.approx(8.0)
 
 
 def test_the_end_gauge_of_the_gum_has_sixteen_degrees_of_freedom() -> None:
@@ -137,6 +141,13 @@ def test_coverage_factors_are_those_of_the_gum(degrees: float, factors: list[flo
 def test_coverage_factors_agree_with_scipy(degrees: int, share: float) -> None:
     theirs = float(student.ppf((1.0 + share) / 2.0, degrees))
     assert coverage_factor(float(degrees), share) == pytest.approx(theirs, rel=1e-6)
+
+
+@pytest.mark.parametrize("degrees", [1001, 1500, 20_000])
+@pytest.mark.parametrize("share", [0.5, 0.9, 0.95, 0.9545, 0.99])
+def test_coverage_factors_keep_their_digits_with_many_degrees_of_freedom(degrees: int, share: float) -> None:
+    theirs = float(student.ppf((1.0 + share) / 2.0, degrees))
+    assert coverage_factor(float(degrees), share) == pytest.approx(theirs, rel=1e-8)
 
 
 def test_degrees_of_freedom_are_cut_to_whole_ones() -> None:
@@ -184,6 +195,20 @@ def test_a_skewed_result_gets_the_shortest_interval_printed_for_it() -> None:
     assert high - low < plain_high - plain_low
 
 
+def test_the_shortest_interval_of_a_few_values_is_the_one_counted_by_hand() -> None:
+    few = Sampled(3.2, 3.9, np.array([0.0, 1.0, 2.0, 3.0, 10.0]))
+    # JCGM 101:2008, 7.7: whole part of 0.6 · 5 + 1/2 is 3, so the ends lie three values apart.
+    assert few.shortest_interval(0.6) == (0.0, 3.0)
+    assert few.shortest_interval(0.75) == (0.0, 10.0)
+    assert few.shortest_interval(0.999) == (0.0, 10.0)
+
+
+def test_the_spread_of_a_few_trials_is_that_of_a_sample() -> None:
+    found = monte_carlo(lambda one: one, lambda random, count: [np.array([1.0, 2.0, 4.0])], seed=1, trials=3)
+    assert found.mean == pytest.approx(7.0 / 3.0)
+    assert found.uncertainty == pytest.approx(statistics.stdev([1.0, 2.0, 4.0]))
+
+
 def test_the_same_seed_gives_the_same_figures() -> None:
     assert four("normal", 1000) == four("normal", 1000)
 
@@ -192,6 +217,7 @@ def test_a_guard_band_moves_the_limit_and_four_statements_are_told_apart() -> No
     assert acceptance_limit(10.0, 1.0) == 9.0
     verdicts = [decide(value, 10.0, 1.0) for value in (8.9, 9.5, 10.0, 10.5, 11.5)]
     assert verdicts == ["pass", "conditional pass", "conditional pass", "conditional fail", "fail"]
+    assert [decide(value, 10.0, 0.0) for value in (10.0, 10.001)] == ["pass", "fail"]
 
 
 @pytest.mark.parametrize("numbers", [(math.nan, 10.0, 1.0), (9.0, math.nan, 1.0), (9.0, 10.0, math.nan), (9.0, 10.0, -1.0)])

@@ -11,7 +11,7 @@ import pytest
 from circuitlint.definition.reading import read_text
 from circuitlint.engine import Review, review
 from circuitlint.errors import InputError
-from circuitlint.limits.reading import resolve
+from circuitlint.limits.reading import read_ruleset, resolve
 from circuitlint.plugins import Gathered, gather
 from circuitlint.reports import kinds as reports
 from circuitlint.review.record import Record
@@ -85,6 +85,41 @@ GOOD = {
     "label": 'return ("lit",)',
     "extra": 'plan.sheet.put("inverse-current", place, glow, current=Key("current", place))',
 }
+RULE = """
+
+from circuitlint.authoring import RATIO, LimitSpec, Rule, ask, at_most
+
+
+class Lit(Rule):
+    name = "lit"
+    title = purpose = applies_to = helps = "light"
+    figures = ("asks for",)
+    states = ("cold",)
+    needs = ()
+    limits = {"most": LimitSpec(RATIO, "most light")}
+
+    def check(self, circuit, limits):
+        yield at_most(ask(circuit, "asks for", "cold"), limits.get("most"))
+
+
+@offers
+def circuitlint_rules():
+    return [Lit]
+"""
+LIT = """\
+format: 1
+name: lit
+title: light
+edition: 2026-12-01
+jurisdiction: nowhere
+statement: others prevail
+sources: {house: {known: common practice}}
+rules:
+  lit:
+    required: true
+    severities: {nominal: minor, worst_case: minor, near_limit: observation, kind: minor, not_assessed: observation}
+    limits: {most: {value: "10", source: house}}
+"""
 HEAD = """\
 format: 1
 supplies:
@@ -272,7 +307,18 @@ def test_extra_figures_that_fail_are_lacking_and_no_check_changes(misbehaviour: 
         assert figure(record, tag, "inverse-current", "cold") is None
         assert figure(sound, tag, "inverse-current", "cold") is not None
     assert any(one.plugin == "lamp" and told in one.what for one in record.problems)
-    assert not any(one.held for one in record.circuits) or any(one.held for one in sound.circuits)
+    assert record.held == sound.held, "no required rule asks for the figure"
+
+
+def test_an_extra_figure_that_a_required_rule_asks_for_holds_the_review_when_it_fails(tmp_path: Path) -> None:
+    rule = RULE.replace("asks for", "inverse-current")
+    (tmp_path / "lamp.py").write_text(LAMP.format(**{**GOOD, "extra": "raise LookupError('no current')"}) + rule)
+    gathered = gather([str(tmp_path / "lamp.py")])
+    gathered.rulesets["lit"] = read_ruleset(LIT.encode(), "lit.yaml")
+    installation = read_text(HEAD + COIL, "coil.yaml", gathered.models())
+    record = review(installation, resolve("lit", gathered.rulesets), gathered, Review("major", "2026-12-01"))
+    assert record.circuits[0].coverage == {"lit": "not assessed"}
+    assert record.held and not record.circuits[0].held
 
 
 def test_a_model_that_cannot_read_its_entry_is_a_fault_that_names_the_plugin(tmp_path: Path) -> None:

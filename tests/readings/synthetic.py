@@ -60,7 +60,9 @@ class Coil:
     bridge: float = 1.0
 
 
-def sound(random: np.random.Generator, resistance: float = 21.0, inductance: float = 0.36, hot: tuple[float, float] = (55.0, 75.0)) -> Coil:
+def sound(
+    random: np.random.Generator, resistance: float = 21.0, inductance: float = 0.36, hot: tuple[float, float] = (55.0, 75.0)
+) -> Coil:
     """A coil within its tolerances on a supply within its bands."""
     return Coil(resistance * random.uniform(0.95, 1.05), inductance * random.uniform(0.95, 1.05), random.uniform(10.0, 30.0),
                 random.uniform(*hot), 230.0 * random.uniform(0.96, 1.04), 50.0 * random.uniform(0.992, 1.008))
@@ -102,7 +104,8 @@ def readings(random: np.random.Generator, coil: Coil, *, tag: str = "A", true_rm
              frequency_read: bool = True, bridge_at: str = "50 Hz") -> str:
     """A readings file of one coil: cold resistance with temperature, bridge, then voltage, current and power running."""
     inputs = "\n".join(
-        f"      {name}: {{accuracy: ± ({100 * share:g} % + {digits}), resolution: {step:g} {'K' if name == 'temperature' else UNITS[name]}"
+        f"      {name}: {{accuracy: ± ({100 * share:g} % + {digits}), "
+        f"resolution: {step:g} {'K' if name == 'temperature' else UNITS[name]}"
         + (f", range: {top:g} A" if name == "current" else f", test_frequency: {bridge_at}" if name == "inductance" else "") + "}"
         for name, (share, digits, step) in INSTRUMENTS.items()
     )
