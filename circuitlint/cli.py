@@ -7,7 +7,6 @@ from __future__ import annotations
 
 import argparse
 import gc
-import os
 import sys
 from collections.abc import Callable, Sequence
 
@@ -16,7 +15,7 @@ from circuitlint.commands import begin, compare, figures, plugins, readings, rep
 from circuitlint.errors import CircuitlintError, InputError
 from circuitlint.isolation.containment import keyboard_heeded
 
-NOTHING_HELD, AT_FAULT, FAILED = 0, 2, 3
+AT_FAULT, FAILED = 2, 3
 COMMANDS = (begin, review, figures, rules, compare, test_sheet, readings, report, plugins, schema)
 """In the order of the help."""
 
@@ -40,11 +39,11 @@ def main(argv: Sequence[str] | None = None) -> int:
     except CircuitlintError as error:
         print(f"circuitlint: {error}", file=sys.stderr)
         return FAILED
-    except BrokenPipeError:
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-        return NOTHING_HELD
     except KeyboardInterrupt:
         print("circuitlint: stopped", file=sys.stderr)
+        return FAILED
+    except Exception as error:
+        print(f"circuitlint: the tool failed, please report it: {type(error).__name__}: {error}", file=sys.stderr)
         return FAILED
 
 

@@ -60,6 +60,8 @@ def bind_rules(ruleset: Ruleset, gathered: Gathered, assembly: Assembly) -> list
     """The rules the ruleset names, with their limits. A rule lost with a failed plugin is a problem; else it is refused."""
     faults: list[Fault] = []
     bound: list[Bound] = []
+    if not ruleset.rules:
+        raise RulesetError(f"the ruleset {ruleset.name!r} names no rule, so nothing could be checked")
     failed = [plugin for plugin in gathered.plugins if plugin.failed]
     for plugin in failed:
         assembly.problem(plugin.name, "", f"the plugin failed: {plugin.failed}", (), fatal=False)

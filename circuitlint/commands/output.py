@@ -9,15 +9,24 @@ import sys
 import tempfile
 from collections.abc import Callable
 
-from circuitlint.errors import InputError
+from circuitlint.errors import CircuitlintError, InputError
 
 
 def put(text: str, file: str) -> None:
     """Write a report whole or not at all; standard output where no file is named."""
     if not file:
-        sys.stdout.buffer.write(text.encode("utf-8", "backslashreplace"))
-        sys.stdout.buffer.flush()
+        try:
+            sys.stdout.buffer.write(text.encode("utf-8", "backslashreplace"))
+            sys.stdout.buffer.flush()
+        except BrokenPipeError:
+            # The reader went away, which changes nothing about what is held.
+            os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        except OSError as error:
+            raise CircuitlintError(f"standard output cannot be written: {error.strerror}") from None
         return
+    file = os.path.realpath(file)
+    if os.path.lexists(file) and not os.path.isfile(file):
+        raise InputError(f"{file}: the report cannot be written: this is not a regular file")
     folder = os.path.dirname(file) or "."
     try:
         handle, name = tempfile.mkstemp(dir=folder, prefix=".circuitlint-", suffix=".part")
@@ -42,12 +51,12 @@ def _umask() -> int:
 
 def columns() -> int:
     """Columns of the terminal, between 60 and 140; 80 where standard output is none."""
-    return min(140, max(60, shutil.get_terminal_size((80, 24)).columns)) if sys.stdout.isatty() else 80
+    return min(140, max(60, shutil.get_terminal_size((80, 24)).columns)) if sys.stdout is not None and sys.stdout.isatty() else 80
 
 
 def colour() -> bool:
     """Whether standard output wants colour: a terminal, no NO_COLOR, not a dumb one."""
-    return sys.stdout.isatty() and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
+    return sys.stdout is not None and sys.stdout.isatty() and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
 
 
 def progress(total: int) -> Callable[[int, int], None]:

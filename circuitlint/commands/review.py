@@ -34,6 +34,9 @@ def add(commands: Any) -> None:
 def _review(arguments: argparse.Namespace) -> int:
     """Review every circuit against every rule of the ruleset and print findings, worst first."""
     wanted = [_kind_and_file(text) for text in arguments.report] or [("text", "")]
+    files = [file for _, file in wanted if file]
+    if len(set(files)) < len(files):
+        raise InputError("two reports go to one file; accepted: a file for each")
     job = job_of(arguments)
     hold_at = arguments.hold_at or "major"
     for kind, _ in wanted:

@@ -119,6 +119,12 @@ class Motor(Entry):
 
     @model_validator(mode="after")
     def _a_sufficient_set(self) -> Motor:
+        for name in ("efficiency", "power_factor", "starting_power_factor"):
+            share = getattr(self, name)
+            if share is not None and share.high > 1.0:
+                raise PydanticCustomError(
+                    "nameplate", "{what}", {"what": f"{name} reads {share.text}, above 1", "accepted": "up to 1, or up to 100 %"}
+                )
         given = {name for name in type(self).model_fields if getattr(self, name) is not None}
         sets = (("shaft_power", "efficiency", "power_factor"), ("rated_voltage", "current", "power_factor"))
         if not any(set(wanted) <= given for wanted in sets):

@@ -5,6 +5,7 @@ The load kinds stand in `loads`; the model of a whole file is made by `document_
 
 from __future__ import annotations
 
+from datetime import date
 from typing import Annotated, Literal, TypeAlias
 
 from pydantic import Field, field_validator, model_validator
@@ -104,6 +105,17 @@ class Concession(Entry):
     rule: str = Field(min_length=1)
     by: str = Field(min_length=1)
     reason: str = Field(min_length=1)
+    @field_validator("until")
+    @classmethod
+    def _a_day(cls, value: str) -> str:
+        try:
+            date.fromisoformat(value)
+        except ValueError:
+            raise PydanticCustomError(
+                "date", "{what}", {"what": f"'until' reads {value!r}, which is no day", "accepted": "a day such as 2027-06-30"}
+            ) from None
+        return value
+
     until: Annotated[str, Field(pattern=r"^\d{4}-\d{2}-\d{2}$", description="Last day, as YYYY-MM-DD.")]
 
 

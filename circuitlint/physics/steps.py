@@ -279,3 +279,28 @@ def starting_demand(*, apparent_power: VoltAmpere, ratio: Ratio) -> VoltAmpere:
 def share_of_ampacity(*, current: Ampere, ampacity: Ampere) -> Ratio:
     """I/Iz = I / Iz"""
     return current / ampacity
+
+
+@formula(
+    "Z", "{U}² / {S} · (cosφ + j sinφ) with cosφ = {cosφ}, {U} above {Ur} / 2",
+    source=Source("Z = U² / conj S", known="derived"),
+    validity="constant power at the voltage it settles at; below half the rated voltage a motor stalls", voltage="U",
+    rated_voltage="Ur", apparent_power="S", power_factor="cosφ",
+)
+def impedance_of_running_motor(
+    *, voltage: Volt, rated_voltage: Volt, apparent_power: VoltAmpere, power_factor: Ratio
+) -> ComplexOhm:
+    """Z = U² / S · (cosφ + j sinφ)
+
+    NaN where the voltage falls below half of the rated one: there is no running point.
+    """
+    turn: Any = power_factor + 1j * np.sqrt(1.0 - power_factor**2)
+    running: Any = np.where(voltage > 0.5 * rated_voltage, voltage, np.nan)
+    impedance: ComplexOhm = running**2 / apparent_power * turn
+    return impedance
+
+
+@formula("U/Ur", "{U} / {Ur}", source=Source("voltage over the rated one", known="derived"), voltage="U", rated_voltage="Ur")
+def share_of_rated_voltage(*, voltage: Volt, rated_voltage: Volt) -> Ratio:
+    """U/Ur = U / Ur"""
+    return voltage / rated_voltage

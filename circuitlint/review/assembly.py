@@ -136,7 +136,8 @@ class Assembly:
         spot = one.definition.spot()
         inputs = tuple(dict.fromkeys(path for solution in one.solutions.values() for path in solution.inputs))
         refined = any(solution.refined for solution in one.solutions.values())
-        faulty = sorted({s.faulty[one.position] for s in one.solutions.values() if s.faulty[one.position]})
+        running = [solution for solution in one.solutions.values() if not solution.state.mistake]
+        faulty = sorted({solution.faulty[one.position] for solution in running if solution.faulty[one.position]})
         drawn = self.figures
         return r.Circuit(
             tag=one.tag, serves=one.entry.serves, fed_from=one.entry.fed_from, system=one.system,  # type: ignore[arg-type]

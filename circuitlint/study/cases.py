@@ -17,7 +17,7 @@ import numpy as np
 from circuitlint.si import RealArray
 
 FEW = 4
-FEW_WITH_CAPACITOR = 6
+FEW_WITH_CAPACITOR = 8
 """So many inputs have all their corners studied. A capacitor makes several hills and valleys, so more are taken then."""
 INTERIOR = 16
 SMALLEST_STEP = 1e-3

@@ -138,6 +138,9 @@ class CoilKind(LoadKind[Coil]):
             put("stored-energy", place, switching_on.stored_energy, inductance=inductance, current=current)
         else:
             self._alternating(plan, place, inductance)
+        if plan.token(f"{place}.rated_voltage") == "stated":
+            put("voltage-share", place, steps.share_of_rated_voltage, voltage=Key("voltage", place),
+                rated_voltage=plan.datum(f"{place}.rated_voltage"))
         if plan.state.name == "cold":
             nameplate.derived_again(plan, place)
         if plan.state.hot and plan.sheet.has(resistance):

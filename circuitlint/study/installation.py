@@ -27,9 +27,11 @@ def study(
     studies: list[CircuitStudy] = []
     groups: dict[Any, list[CircuitStudy]] = {}
     boards = study_boards(installation, kinds) if installation.boards else {}
+    unknown = _unknown(installation, kinds) if installation.boards else {}
     others = {tag: drop for state in boards.values() for tag, drop in state.drops.items()}
     for definition in installation.circuits:
-        one = prepare(definition, installation, kinds, others.get(definition.entry.tag))
+        tag = definition.entry.tag
+        one = prepare(definition, installation, kinds, others.get(tag), unknown.get(tag, ()))
         one.boards = boards
         studies.append(one)
         key = (one.system, shape_of(one.tree), one.way, one.data.signature())
@@ -37,6 +39,11 @@ def study(
     for group in groups.values():
         _study_group(group, kinds, sought, wanted)
     return studies
+
+
+def _has_armature(one: CircuitStudy) -> bool:
+    """Whether any coil of the circuit has an armature that could stick, or does not say that it has none."""
+    return any(one.choice(f"{place}.armature") != "none" for place in one.leaves("coil"))
 
 
 def _study_group(
@@ -48,6 +55,8 @@ def _study_group(
     for position, one in enumerate(group):
         one.position = position
     for state in states_of(first.system, wanted):
+        if state.name == "stuck-open" and not _has_armature(first):
+            continue
         sheet = worksheet(state, first.system, first.data, first.tree, first.way, kinds)
         along = (*first.way, *(("others",) if first.data.tokens.get("others") == "known" else ()))
         phases = 3 if first.feed.balanced else 1
@@ -57,13 +66,14 @@ def _study_group(
 
 
 def prepare(
-    definition: CircuitDefinition, installation: Installation, kinds: Kinds, others: complex | None = None
+    definition: CircuitDefinition, installation: Installation, kinds: Kinds, others: complex | None = None,
+    unknown: Sequence[str] = (),
 ) -> CircuitStudy:
     """A circuit with its data and its tree, not yet solved."""
     entry = definition.entry
     load = entry.load  # type: ignore[attr-defined]
     feed = feed_of(entry, installation)
-    data = collect(entry, feed, load, kinds, others)
+    data = collect(entry, feed, load, kinds, others, unknown)
     return CircuitStudy(definition, feed.supply, circuit_tree(entry, load, feed), data, feed, way_of(feed, entry))
 
 
@@ -94,6 +104,22 @@ def study_boards(installation: Installation, kinds: Kinds) -> dict[str, BoardSta
             state.drops = {tag: drops[tag] for tag in state.circuits if tag in drops}
         found |= states
     return found
+
+
+def _unknown(installation: Installation, kinds: Kinds) -> dict[str, tuple[str, ...]]:
+    """For each circuit, the tags of others on boards of the same supply whose current cannot be known."""
+    unknown: dict[str, list[str]] = {}
+    fed: dict[str, str] = {}
+    for definition in installation.circuits:
+        one = prepare(definition, installation, kinds, 0j)
+        if not one.feed.boards:
+            continue
+        fed[one.tag] = one.feed.supply_name
+        state = states_of(one.system, ("cold",))[0]
+        sheet = worksheet(state, one.system, one.data, one.tree, one.way, kinds)
+        if Key("current phasor", "") in sheet.lacks:
+            unknown.setdefault(one.feed.supply_name, []).append(one.tag)
+    return {tag: tuple(other for other in unknown.get(supply, ()) if other != tag) for tag, supply in fed.items()}
 
 
 def _own_path(one: CircuitStudy, boards: Boards) -> complex:

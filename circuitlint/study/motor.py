@@ -40,7 +40,7 @@ class MotorKind(LoadKind[Motor]):
         if plan.direct:
             return plan.sheet.lack("impedance phasor", place, why="a motor's plate says nothing of direct current")
         demand = self._demand(plan, place)
-        if plan.state.open_gap:
+        if plan.state.name == "switch-on":
             wanted = (f"{place}.starting_ratio", f"{place}.starting_power_factor")
             absent = [path for path in wanted if not plan.has(path)]
             if absent:
@@ -51,7 +51,8 @@ class MotorKind(LoadKind[Motor]):
                        voltage=plan.datum(f"{place}.rated_voltage"), apparent_power=start,
                        power_factor=plan.datum(f"{place}.starting_power_factor"))
         guess = plan.sheet.guess("settled terminal voltage", place, si.VOLTAGE)
-        return put("impedance phasor", place, steps.impedance_of_demand, figure=False, voltage=guess, apparent_power=demand,
+        return put("impedance phasor", place, steps.impedance_of_running_motor, figure=False, voltage=guess,
+                   rated_voltage=plan.datum(f"{place}.rated_voltage"), apparent_power=demand,
                    power_factor=plan.datum(f"{place}.power_factor"))
 
     def _demand(self, plan: Plan, place: str) -> Key:
@@ -67,5 +68,5 @@ class MotorKind(LoadKind[Motor]):
 
     def figures(self, plan: Plan, place: str) -> None:
         """Nothing beyond voltage, current and power; running, its voltage settles the guess."""
-        if not plan.direct and not plan.state.open_gap:
+        if not plan.direct and plan.state.name != "switch-on":
             plan.sheet.settle(Key("settled terminal voltage", place), Key("voltage", place), plan.datum("supply.voltage"))

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from circuitlint import si
 from circuitlint.definition.loads import LoadEntry
 from circuitlint.definition.models import Cable, CircuitEntry
@@ -28,7 +30,7 @@ NEED_HEAT = ("insulation", "method", "ambient", "grouped_circuits")
 
 
 def collect(
-    entry: CircuitEntry, feed: Feed, load: LoadEntry, kinds: Kinds, others: complex | None = None
+    entry: CircuitEntry, feed: Feed, load: LoadEntry, kinds: Kinds, others: complex | None = None, unknown: Sequence[str] = ()
 ) -> DataSheet:
     """Every number the study of one circuit starts from. `others` is what the others drop, over the nominal loop voltage."""
     sheet, supply = DataSheet(), feed.supply
@@ -38,7 +40,7 @@ def collect(
         "supply.voltage", si.VOLTAGE, stated.nominal * feed.scale, stated.low * feed.scale, stated.high * feed.scale,
         text=stated.text,
     )
-    _collect_upstream(sheet, feed, others)
+    _collect_upstream(sheet, feed, others, unknown)
     at = supply.frequency.nominal if supply.frequency else 50.0
     _exact(sheet, "cable frequency", si.FREQUENCY, at, Source("the cables' reactance holds at the supply's frequency"))
     back = Source("three phases alike: no current flows back" if feed.balanced else "the current flows out and back")
@@ -71,12 +73,14 @@ def _exact(sheet: DataSheet, path: str, dimension: si.Dimension, value: float, s
     sheet.assume(path, dimension, value, value, value, source)
 
 
-def _collect_upstream(sheet: DataSheet, feed: Feed, others: complex | None) -> None:
+def _collect_upstream(sheet: DataSheet, feed: Feed, others: complex | None, unknown: Sequence[str]) -> None:
     """Feeders on the way, and what the others on the boards drop along them; they may run or not."""
     for path in feed.missing:
         sheet.lack("feeders", path, why="the way from the origin to the board is not stated")
     for place, run in feed.runs:
         _collect_cable(sheet, place, run, feed)
+    if unknown and feed.boards:
+        sheet.lack("feeders", *(f"the data of {tag}" for tag in unknown), why="what the others on the boards draw is not known")
     if others is None or not feed.boards:
         return
     sheet.token("others", "known")
@@ -178,7 +182,8 @@ def counts_of(load: LoadEntry, place: str) -> list[tuple[str, int]]:
 def circuit_tree(entry: CircuitEntry, load: LoadEntry, feed: Feed) -> Node:
     """The load tree of a circuit, inside a delta where it stands between the lines of three phases."""
     tree = tree_of(load, "load")
-    if feed.balanced and entry.connection == "delta":
+    # A motor's plate tells what the lines carry, whichever way its windings are joined.
+    if feed.balanced and entry.connection == "delta" and load.kind != "motor":
         tree = Node("delta", "delta", (tree,))
     if entry.correction is not None:
         tree = Node("parallel", "terminals", (tree, Node("capacitor", "correction")))
@@ -245,7 +250,9 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, way: tu
     _drop(plan, terminal)
     entry = put("current phasor", tree.place, steps.shared_current, figure=False, current=current)
     share_out(plan, tree, kinds, terminal, entry)
-    if state.name == "switch-on":
+    if state.name == "switch-on" and load is None:
+        plan.sheet.lack("switch-on-peak", "", "the source's impedance", why="only the source limits what charges a capacitor")
+    elif state.name == "switch-on":
         _switch_on(plan, tree, kinds)
     write_extras(plan, kinds)
     return plan.sheet.finish()

@@ -16,8 +16,10 @@ from circuitlint.study.plan import Node
 from circuitlint.study.states import State
 from circuitlint.study.worksheet import Key, Line, Worksheet
 
-UNSETTLED = "in some case within the tolerances the temperatures do not settle (thermal runaway)"
+UNSETTLED = "in some case within the tolerances no working point settles (thermal runaway, or a motor that stalls)"
 OUT_OF_RANGE = "in some case within the tolerances the data leave the range of a formula"
+MOST_NUMBERS = 4_000_000
+"""Numbers held at once while a worst case is refined, so that a wide circuit needs time, not memory."""
 UNBALANCED = "the solution does not balance to 1e-9, so no figure is given"
 
 
@@ -91,7 +93,10 @@ def solve(
         slim = sheet.only(line.key for line in wanted)
 
         def evaluate(trial: RealArray) -> RealArray:
-            return figures(slim.run(_put_in(table, used, inputs, trial)), wanted, trial.shape[1])
+            size = max(32, MOST_NUMBERS // (len(slim.lines) * circuits + 1))
+            pieces = [trial[:, at : at + size] for at in range(0, trial.shape[1], size)]
+            found = [figures(slim.run(_put_in(table, used, inputs, one)), wanted, one.shape[1]) for one in pieces]
+            return found[0] if len(found) == 1 else np.concatenate(found, axis=2)
 
         lowest[rows], highest[rows], further = cases.refine(evaluate, points, found[rows])
         studied += further

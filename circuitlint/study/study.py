@@ -161,8 +161,9 @@ class CircuitStudy:
         note = line.note
         if line.key.name == "power-factor":
             reactive = solution.row.get(Key("reactive-power", line.key.of))
-            if reactive is not None:
-                note = leads_or_lags(float(solution.nominal[reactive, at]))
+            apparent = solution.row.get(Key("apparent-power", line.key.of))
+            if reactive is not None and apparent is not None:
+                note = leads_or_lags(float(solution.nominal[reactive, at]), float(solution.nominal[apparent, at]))
         return Figure(
             line.key.name, line.key.of, solution.state.name, line.formula.dimension, float(solution.nominal[row, at]),
             float(solution.lowest[row, at]), float(solution.highest[row, at]), line.formula, inputs,
@@ -207,6 +208,8 @@ def _leaves(node: Node, kind: str) -> Iterable[str]:
         yield from _leaves(one, kind)
 
 
-def leads_or_lags(reactive: float) -> str:
+def leads_or_lags(reactive: float, apparent: float) -> str:
     """`lagging` where reactive power is taken, `leading` where it is given back, empty at unity."""
+    if abs(reactive) <= 1e-9 * apparent:
+        return ""
     return "lagging" if reactive > 0.0 else "leading" if reactive < 0.0 else ""

@@ -34,13 +34,13 @@ class SupplyMatch(Rule):
         "volts per hertz saturate the core and heat it, too few let the armature drop."
     )
     applies_to = "circuits with a coil"
-    figures = ("flux-ratio",)
+    figures = ("flux-ratio", "voltage-share")
     states = ("cold",)
     needs = ("made_for on the coil's plate", "rated_voltage and rated_frequency, for volts per hertz")
     helps = "a coil made for this supply, or the supply the coil is made for"
     limits = {
-        "largest_flux": LimitSpec(RATIO, "largest volts per hertz over those of the plate"),
-        "smallest_flux": LimitSpec(RATIO, "smallest volts per hertz over those of the plate"),
+        "largest_flux": LimitSpec(RATIO, "largest volts per hertz over those of the plate; volts, on direct current"),
+        "smallest_flux": LimitSpec(RATIO, "smallest volts per hertz over those of the plate; volts, on direct current"),
     }
 
     def applies(self, circuit: CircuitStudy) -> bool:
@@ -61,8 +61,8 @@ class SupplyMatch(Rule):
                 yield Fact(aspect, what, why="the plate against the supply's system", at=at)
             else:
                 yield Holds(aspect, f"{place} is made for {made_for}, as it is fed", at=at)
-            if circuit.system != "dc" and circuit.choice(f"{place}.rated_voltage") and circuit.choice(f"{place}.rated_frequency"):
-                asked = ask(circuit, "flux-ratio", "cold", place)
+            if circuit.choice(f"{place}.rated_voltage"):
+                asked = ask(circuit, "voltage-share" if circuit.system == "dc" else "flux-ratio", "cold", place)
                 yield at_most(asked, limits.get("largest_flux"), at=at)
                 yield at_least(asked, limits.get("smallest_flux"), at=at)
 

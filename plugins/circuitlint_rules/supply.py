@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from circuitlint.authoring import RATIO, CircuitStudy, Limits, LimitSpec, Outcome, Rule, ask, at_least, at_most
+from circuitlint.authoring import RATIO, CircuitStudy, Figure, Limits, LimitSpec, Outcome, Rule, ask, at_least, at_most
 
 
 class MinimumPowerFactor(Rule):
@@ -27,7 +27,10 @@ class MinimumPowerFactor(Rule):
     def check(self, circuit: CircuitStudy, limits: Limits) -> Iterator[Outcome]:
         """The power factor in each running state."""
         for state in self.states:
-            yield at_least(ask(circuit, "power-factor", state), limits.get("circuit"), at=("load",))
+            asked = ask(circuit, "power-factor", state)
+            leading = isinstance(asked.found, Figure) and asked.found.note == "leading"
+            help = "a smaller capacitor: the current leads" if leading else ""
+            yield at_least(asked, limits.get("circuit"), at=("load",), help=help)
 
 
 class VoltageDrop(Rule):

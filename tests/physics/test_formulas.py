@@ -18,7 +18,7 @@ from .equations import NotAnEquation, worked_out
 from .tracked import Tracked, WrongDimension, made, powers_of, summed
 
 # Told in words, as no closed equation is there to print; tests of their own hold them.
-IN_WORDS = {"switch-on-factor", "switch-on-peak", "skin-effect"}
+IN_WORDS = {"switch-on-factor", "switch-on-peak", "skin-effect", "impedance-of-running-motor"}
 
 # Equations with a constant that has a unit, and the unit it leaves in the result: 0.127 mm, a square mil, µ0, ε0.
 CONSTANTS = {
