@@ -1,7 +1,8 @@
 """Everything a plugin imports, its rules, load kinds and figures alike.
 
 To write a rule: `Rule`, `CircuitStudy`, `Limits`, `LimitSpec`, `Outcome`; what it asks, `ask`; what it yields, `at_least`,
-`at_most`, `Fact`, `Holds`, `Unknown`; a limit that is a share of a datum, `share_of`; a dimension, such as `CURRENT`.
+`at_most`, `Fact`, `Holds`, `Unknown`; a datum as it stands, `stated`; a limit that is a share of a datum, `share_of`; a
+dimension, such as `CURRENT`.
 To write a load kind: `LoadKind`, `Entry`, `fields`, `DataSheet`, `Plan`, `Key`; a formula of one's own, `formula` with `si` and
 `Source`; a shipped one, `shipped_formula`. To add figures: `ExtraFigures`. To offer any of them: `offers` above one of the
 functions that `circuitlint.hooks` describes.
@@ -41,12 +42,15 @@ from circuitlint.review.rule import (
     at_least,
     at_most,
     path_of,
+    runs_away,
     share_of,
+    stated,
 )
 from circuitlint.si import (
     ACTIVE_POWER,
     ANGLE,
     APPARENT_POWER,
+    AREA,
     CAPACITANCE,
     CURRENT,
     ENERGY,
@@ -65,7 +69,7 @@ from circuitlint.si import (
     Dimension,
 )
 from circuitlint.sources import Source
-from circuitlint.study.data import DataSheet
+from circuitlint.study.data import DataSheet, Datum
 from circuitlint.study.extras import ExtraFigures
 from circuitlint.study.plan import LoadKind, Plan
 from circuitlint.study.study import CircuitStudy, Figure
@@ -75,6 +79,7 @@ __all__ = [
     "ACTIVE_POWER",
     "ANGLE",
     "APPARENT_POWER",
+    "AREA",
     "CAPACITANCE",
     "CURRENT",
     "ENERGY",
@@ -94,6 +99,7 @@ __all__ = [
     "CircuitStudy",
     "Comparison",
     "DataSheet",
+    "Datum",
     "Dimension",
     "Entry",
     "ExtraFigures",
@@ -126,11 +132,13 @@ __all__ = [
     "offers",
     "path_of",
     "read",
+    "runs_away",
     "share_of",
     "shipped_formula",
     "show",
     "show_range",
     "si",
+    "stated",
 ]
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import difflib
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field
 
@@ -60,8 +61,6 @@ def bind_rules(ruleset: Ruleset, gathered: Gathered, assembly: Assembly) -> list
     """The rules the ruleset names, with their limits. A rule lost with a failed plugin is a problem; else it is refused."""
     faults: list[Fault] = []
     bound: list[Bound] = []
-    if not ruleset.rules:
-        raise RulesetError(f"the ruleset {ruleset.name!r} names no rule, so nothing could be checked")
     failed = [plugin for plugin in gathered.plugins if plugin.failed]
     for plugin in failed:
         assembly.problem(plugin.name, "", f"the plugin failed: {plugin.failed}", (), fatal=False)
@@ -91,5 +90,6 @@ def bind_rules(ruleset: Ruleset, gathered: Gathered, assembly: Assembly) -> list
 def nearest_rule(name: str, known: Iterable[str]) -> str:
     """What a misspelt rule name may have meant."""
     from_list = sorted(known)
-    close = [one for one in from_list if set(one.split("-")) & set(name.split("-"))]
+    close = difflib.get_close_matches(name, from_list, 1)
+    close = close or [one for one in from_list if set(one.split("-")) & set(name.split("-"))]
     return f"did you mean {close[0]!r}?" if close else f"one of {', '.join(from_list)}"

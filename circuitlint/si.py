@@ -70,6 +70,11 @@ DIMENSIONS: dict[str, Dimension] = {
     value.name: value for value in list(globals().values()) if isinstance(value, Dimension)
 }
 
+# Constants of tables, which a definition never states: they are printed on calculation sheets, and not read.
+WITHSTAND = Dimension("adiabatic constant", "ampere * second ** 0.5 / meter ** 2", "A·√s/m²", ("115e6 A√s/m2",))
+TIME_PER_POWER = Dimension("time by power", "second / watt", "s/W", ("6 ms/W",))
+OF_TABLES: dict[str, Dimension] = {one.name: one for one in (WITHSTAND, TIME_PER_POWER)}
+
 Ohm: TypeAlias = Annotated[Real, RESISTANCE]
 Henry: TypeAlias = Annotated[Real, INDUCTANCE]
 Farad: TypeAlias = Annotated[Real, CAPACITANCE]

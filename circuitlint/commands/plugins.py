@@ -48,7 +48,7 @@ def _lines(gathered: Gathered, width: int) -> list[str]:
         lines += _entry("from", f"{one.origin}, {one.place}" if one.place else one.origin, width)
         kinds: dict[str, list[str]] = {}
         for offer in one.offers:
-            for kind in ("report kind", "load kind", "rule", "ruleset", "part", "figures"):
+            for kind in ("report kind", "load kind", "rule on readings", "rule", "ruleset", "part", "figures"):
                 if offer.startswith(f"{kind} "):
                     kinds.setdefault(kind, []).append(offer.removeprefix(f"{kind} "))
                     break
@@ -60,9 +60,11 @@ def _lines(gathered: Gathered, width: int) -> list[str]:
 
 
 def _several(kind: str, number: int) -> str:
-    return kind if number == 1 or kind.endswith("s") else f"{kind}s"
+    if number == 1 or kind == "figures":
+        return kind
+    return "rules on readings" if kind == "rule on readings" else f"{kind}s"
 
 
 def _entry(word: str, text: str, width: int) -> list[str]:
-    return textwrap.wrap(text, width, initial_indent=f"  {word:<12} ", subsequent_indent=" " * 15, break_on_hyphens=False,
+    return textwrap.wrap(text, width, initial_indent=f"  {word:<17} ", subsequent_indent=" " * 20, break_on_hyphens=False,
                          break_long_words=False)

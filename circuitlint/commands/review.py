@@ -39,6 +39,8 @@ def _review(arguments: argparse.Namespace) -> int:
         raise InputError("two reports go to one file; accepted: a file for each")
     job = job_of(arguments)
     hold_at = arguments.hold_at or "major"
+    if not job.ruleset.rules:
+        raise InputError(f"the ruleset {job.ruleset.name!r} names no rule, so nothing could be checked")
     for kind, _ in wanted:
         reports.check(kind, job.gathered.reports)
     on_date = arguments.on_date or datetime.date.today().isoformat()

@@ -6,12 +6,14 @@ from collections.abc import Mapping
 from functools import lru_cache
 from typing import Annotated, Any, Literal
 
-from pydantic import BaseModel, Field, create_model, model_validator
+from pydantic import BaseModel, Field, create_model, field_validator, model_validator
 from pydantic_core import PydanticCustomError
 
 from circuitlint.definition import fields as f
+from circuitlint.definition.devices import Ballast, Transformer
 from circuitlint.definition.fields import Entry, OneOrMany
 from circuitlint.definition.models import Board, CircuitEntry, Concession, Material, Supply
+from circuitlint.definition.saturation import Saturation, refusal
 
 
 class Gap(Entry):
@@ -53,6 +55,22 @@ class Coil(Entry):
     rated_frequency: f.Frequency | None = None
     temperature_rise: f.TemperatureRise | None = Field(default=None, description="Mean winding rise at rated conditions.")
     thermal_resistance: f.ThermalResistance | None = Field(default=None, description="Mean winding rise per watt of loss.")
+    thermal_class: Literal["105", "120", "130", "155", "180", "200"] | None = Field(
+        default=None, description="Thermal class of the insulation, IEC 60085."
+    )
+    rated_duty: f.Share | None = Field(default=None, description="Share of the time it may be on, where not continuously.")
+    lowest_voltage: f.Share | None = Field(default=None, description="Share of the rated voltage from which it closes: `85 %`.")
+    highest_voltage: f.Share | None = Field(default=None, description="Share of the rated voltage it may run at: `110 %`.")
+    pull_in_voltage: f.Voltage | None = Field(default=None, description="Voltage at which it pulls in, winding at 20 degC.")
+    drop_out_voltage: f.Voltage | None = Field(default=None, description="Voltage below which it must have let go.")
+    drop_out_current: f.Current | None = Field(default=None, description="Current below which it must have let go.")
+    saturation_current: f.Current | None = Field(default=None, description="Peak current up to which its inductance holds.")
+    saturation: Saturation | None = Field(default=None, description="How its inductance falls with current.")
+
+    @field_validator("thermal_class", mode="before")
+    @classmethod
+    def _number_as_text(cls, value: object) -> object:
+        return str(value) if isinstance(value, int) and not isinstance(value, bool) else value
 
     @model_validator(mode="after")
     def _a_sufficient_set(self) -> Coil:
@@ -67,6 +85,9 @@ class Coil(Entry):
             raise PydanticCustomError(
                 "nameplate", "{what}", {"what": "a power factor above 1", "accepted": "up to 1, with its tolerance"}
             )
+        refused = refusal(given, self.saturation, self.armature) if self.saturation is not None else None
+        if refused is not None:
+            raise PydanticCustomError("nameplate", "{what}", {"what": refused[0], "accepted": refused[1]})
         return self
 
 
@@ -97,6 +118,7 @@ class Capacitor(Entry):
 
     capacitance: f.Capacitance
     rated_voltage: f.Voltage | None = None
+    discharge_resistance: f.Resistance | None = Field(default=None, description="Resistor that stays across the capacitor.")
 
 
 class Impedance(Entry):
@@ -141,6 +163,8 @@ CORE_KINDS: Mapping[str, type[BaseModel]] = {
     "capacitor": Capacitor,
     "impedance": Impedance,
     "motor": Motor,
+    "transformer": Transformer,
+    "ballast": Ballast,
 }
 
 COMPOSED = ("series", "parallel")

@@ -30,6 +30,12 @@ class Supply(Entry):
         description="Voltage at the origin with its band; rms on alternating current, between lines on three phases."
     )
     frequency: f.Frequency | None = Field(default=None, description="Frequency with its band; not on direct current.")
+    earthing: Literal["TN-S", "TN-C-S", "TT", "IT"] | None = Field(default=None, description="Type of earthing.")
+    loop_impedance: f.Resistance | None = Field(default=None, description="Earth-fault loop impedance at the origin.")
+    fault_current: f.Current | None = Field(default=None, description="Largest prospective fault current at the origin.")
+    measurement_category: Literal["II", "III", "IV"] | None = Field(
+        default=None, description="Measurement category, IEC 61010-1, of the places this supply reaches."
+    )
 
     @model_validator(mode="after")
     def _frequency_where_it_belongs(self) -> Supply:
@@ -62,6 +68,8 @@ class Cable(Entry):
     reactance: f.ResistancePerLength | None = Field(
         default=None, description="Reactance of one conductor per length at the supply's frequency."
     )
+    protective_section: f.Section | None = Field(default=None, description="Section of the protective conductor.")
+    capacitance: f.CapacitancePerLength | None = Field(default=None, description="Capacitance between the two wires per length.")
 
     @field_validator("conductor_class", mode="before")
     @classmethod
@@ -96,6 +104,72 @@ class Meter(Entry):
     continuous: f.Current | None = Field(default=None, description="Current the input carries without a time limit.")
     longest: f.Time | None = Field(default=None, description="How long the input may carry more than that, up to its range.")
     reading_time: f.Time | None = Field(default=None, description="How long the current will be carried for a reading.")
+    category: Annotated[str, Field(pattern=r"^CAT (II|III|IV) [1-9][0-9]{0,3} V$")] | None = Field(
+        default=None, description="Measurement category with its voltage to earth, as marked: `CAT III 600 V`."
+    )
+    burden_voltage: f.Voltage | None = Field(default=None, description="Voltage across the input at the full range.")
+    resolution: f.Current | None = Field(default=None, description="One count of the last place in the range used.")
+    responds: Literal["true rms", "average"] | None = Field(default=None, description="What it makes of an alternating current.")
+    test_current: f.Current | None = Field(default=None, description="Current its resistance range drives through a winding.")
+
+
+class Protection(Entry):
+    """The device at the start of the circuit that opens it at overload and fault."""
+
+    device: Literal["circuit-breaker", "fuse"]
+    rating: f.Current
+    curve: Literal["B", "C", "D", "gG"] | None = Field(default=None, description="B, C or D of a circuit-breaker; gG of a fuse.")
+    breaking_capacity: f.Current | None = None
+    let_through: f.LetThrough | None = Field(
+        default=None, description="Let-through at the prospective fault current, from the maker's sheet."
+    )
+    residual_current: f.Current | None = Field(default=None, description="Rated residual current, where it has that function.")
+
+    @model_validator(mode="after")
+    def _curve_of_its_kind(self) -> Protection:
+        if self.curve is not None and (self.curve == "gG") != (self.device == "fuse"):
+            accepted = "gG" if self.device == "fuse" else "B, C or D"
+            raise PydanticCustomError(
+                "contradiction", "{what}", {"what": f"a {self.device} with curve {self.curve}", "accepted": accepted}
+            )
+        return self
+
+
+class Switching(Entry):
+    """What switches the circuit in service: a contact or an electronic output."""
+
+    contact: str = Field(default="", max_length=80, description="Which contact it is.")
+    category: Annotated[str, Field(max_length=20)] | None = Field(
+        default=None, description="Utilization category or pilot-duty code, such as AC-15, DC-13 or B300."
+    )
+    rated_current: f.Current | None = Field(default=None, description="Rated current in that category.")
+    rated_voltage: f.Voltage | None = None
+    withstand: f.Voltage | None = Field(default=None, description="Peak voltage the open contact or output bears.")
+    smallest_current: f.Current | None = Field(default=None, description="Smallest current it switches dependably.")
+    leakage_current: f.Current | None = Field(default=None, description="Current that flows on when it is open.")
+    release_within: f.Time | None = Field(default=None, description="Time after opening by which the armature must have let go.")
+    operations: f.Frequency | None = Field(default=None, description="Operations in time, such as 0.5 Hz.")
+
+
+class Suppressor(Entry):
+    """What stands across the load to hold the switch-off voltage down."""
+
+    kind: Literal["none", "diode", "zener", "varistor", "resistor"] = Field(
+        description="`zener` is a diode with a Zener diode in series, `none` says that there is nothing."
+    )
+    clamp_voltage: f.Voltage | None = Field(default=None, description="Voltage across it at the current of opening.")
+    resistance: f.Resistance | None = Field(default=None, description="Of a resistor.")
+    energy: f.Energy | None = Field(default=None, description="Energy it bears in one operation.")
+    power: f.ActivePower | None = Field(default=None, description="Mean power it bears.")
+
+    @model_validator(mode="after")
+    def _clamps_as_its_kind(self) -> Suppressor:
+        if self.kind in ("none", "diode", "resistor") and self.clamp_voltage is not None:
+            raise PydanticCustomError(
+                "contradiction", "{what}",
+                {"what": f"a suppressor of kind {self.kind} with a clamp voltage", "accepted": "`zener` or `varistor`"},
+            )
+        return self
 
 
 class Concession(Entry):
@@ -131,10 +205,14 @@ class CircuitEntry(Entry):
     connection: Literal["star", "delta"] | None = Field(
         default=None, description="How a balanced three-phase load is connected; star where not stated."
     )
+    duty: f.Share | None = Field(default=None, description="Longest share of the time the load is on, where it has a rated duty.")
     diversity: f.Share | None = Field(default=None, description="Share of the circuit that runs when the board is loaded.")
     ambient: f.Temperature | None = Field(default=None, description="Air temperature at the load.")
     cable: Annotated[list[Cable] | None, OneOrMany] = Field(
         default=None, description="Runs from the origin to the load, in order; `[]` where there is none."
     )
     correction: Correction | None = Field(default=None, description="A capacitor at the load's terminals.")
+    protection: Protection | None = None
+    switching: Switching | None = None
+    suppressor: Suppressor | None = None
     meter: Meter | None = None

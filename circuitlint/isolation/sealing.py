@@ -6,8 +6,8 @@ circuit. Where something was changed, it is put back.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
-from operator import attrgetter
+from collections.abc import Callable, Iterable, Mapping
+from operator import attrgetter, is_
 from types import MappingProxyType
 from typing import Any
 
@@ -15,29 +15,52 @@ import numpy as np
 from pydantic import BaseModel
 
 from circuitlint.quantity import Quantity
+from circuitlint.study.data import DataSheet
+from circuitlint.study.feeding import BoardState
 from circuitlint.study.solving import Solution
 from circuitlint.study.study import CircuitStudy
 from circuitlint.study.worksheet import Worksheet
 
 _OF_QUANTITY = tuple(name for name in Quantity.__slots__ if name != "__weakref__")
 _quantity = attrgetter(*_OF_QUANTITY)
-_OF_SOLUTION = tuple(Solution.__slots__)
-_solution = attrgetter(*_OF_SOLUTION)
-_OF_STUDY = tuple(name for name in CircuitStudy.__slots__ if name != "places")
-_study = attrgetter(*_OF_STUDY)
+
+
+def _names_of(kind: type[Any], *but: str) -> tuple[tuple[str, ...], Callable[[Any], tuple[Any, ...]]]:
+    names = tuple(name for name in kind.__slots__ if name not in but)
+    return names, attrgetter(*names)
+
+
+_NAMES: dict[type[Any], tuple[tuple[str, ...], Callable[[Any], tuple[Any, ...]]]] = {
+    CircuitStudy: _names_of(CircuitStudy, "places"),
+    DataSheet: _names_of(DataSheet),
+    Solution: _names_of(Solution),
+    Worksheet: _names_of(Worksheet, "slims"),
+    BoardState: _names_of(BoardState),
+}
+"""What the names of a study's objects stand for; left out are the caches that the tool itself fills on the way."""
 
 
 def seal(circuits: Iterable[CircuitStudy]) -> None:
     """Close the arrays and mappings of finished studies against writing."""
     done: set[int] = set()
     for circuit in circuits:
-        _close(circuit, "solutions")
+        if id(circuit.boards) not in done:
+            done.add(id(circuit.boards))
+            _seal_boards(circuit.boards)
+        for name in ("solutions", "boards"):
+            _close(circuit, name)
         for name in ("data", "tokens", "lacks"):
             _close(circuit.data, name)
         for solution in circuit.solutions.values():
             if id(solution) not in done:
                 done.add(id(solution))
                 _seal_solution(solution)
+
+
+def _seal_boards(boards: Mapping[str, BoardState]) -> None:
+    for board in boards.values():
+        for name in ("voltages", "currents", "drops"):
+            _close(board, name)
 
 
 def _seal_solution(solution: Solution) -> None:
@@ -66,17 +89,21 @@ def _close(owner: object, name: str) -> None:
 class Watch:
     """What one circuit's rules could still change, as it was: entries, lists and what the study's own names stand for."""
 
-    __slots__ = ("circuit", "dicts", "lists", "quantities", "solutions", "study")
+    __slots__ = ("dicts", "lists", "objects", "quantities")
 
     def __init__(self, circuit: CircuitStudy) -> None:
-        self.circuit = circuit
-        self.study = _study(circuit)
-        self.solutions = [(one, _solution(one)) for one in circuit.solutions.values()]
+        objects: list[Any] = [circuit, circuit.data]
+        objects += (circuit.boards[name] for name in circuit.feed.boards if name in circuit.boards)
+        for one in circuit.solutions.values():
+            objects += (one, one.sheet)
+        self.objects = [(one, *_NAMES[type(one)], _NAMES[type(one)][1](one)) for one in objects]
         self.dicts: list[tuple[dict[str, Any], dict[str, Any]]] = []
         self.lists: list[tuple[list[Any], list[Any]]] = []
         self.quantities: list[tuple[Quantity, tuple[Any, ...]]] = []
         self._walk(circuit.definition.entry)
         self._walk(circuit.supply)
+        for _, run in circuit.feed.runs:
+            self._walk(run)
 
     def _walk(self, value: object) -> None:
         if isinstance(value, Quantity):
@@ -98,8 +125,6 @@ class Watch:
 
     def untouched(self) -> bool:
         """Whether everything is as it was."""
-        if not _same(_study(self.circuit), self.study):
-            return False
         for now, then in self.dicts:
             if now != then:
                 return False
@@ -109,13 +134,12 @@ class Watch:
         for quantity, given in self.quantities:
             if _quantity(quantity) != given:
                 return False
-        return all(_same(_solution(one), then) for one, then in self.solutions)
+        return all(_same(given(one), then) for one, _, given, then in self.objects)
 
     def put_back(self) -> None:
         """Make everything as it was."""
         for names, owner, values in (
-            (_OF_STUDY, self.circuit, self.study),
-            *((_OF_SOLUTION, one, then) for one, then in self.solutions),
+            *((names, one, then) for one, names, _, then in self.objects),
             *((_OF_QUANTITY, one, given) for one, given in self.quantities),
         ):
             for name, value in zip(names, values, strict=True):
@@ -128,7 +152,7 @@ class Watch:
 
 
 def _same(one: tuple[Any, ...], other: tuple[Any, ...]) -> bool:
-    return all(map(lambda a, b: a is b, one, other))
+    return all(map(is_, one, other))
 
 
 def closed(limits: Mapping[str, Any]) -> Mapping[str, Any]:

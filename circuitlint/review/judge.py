@@ -107,10 +107,11 @@ class Judge:
             result, basis, severity = "nonconforming", "nominal", self.severities["nominal"]
         elif beyond(worst, limit.value, least):
             result, basis, severity = "nonconforming", "worst case", self.severities["worst_case"]
-        elif margin is not None and margin < self.near:
+        elif margin is not None and margin < self.near and figure.formula is not None:
+            # A datum held as it is stated, such as a section, may be what the limit asks for and no more.
             basis, severity = "near the limit", self.severities["near_limit"]
         share = uncertainty = None
-        if basis == "worst case":
+        if basis == "worst case" and figure.formula is not None:
             share, uncertainty = circuit.share_beyond(figure.state, Key(figure.name, figure.of), limit.value, least)
         return record.Check(
             id=self._id(circuit, figure.name, figure.state, figure.of, limit.name), rule=self.rule.name,

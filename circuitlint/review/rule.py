@@ -13,7 +13,9 @@ from typing import ClassVar, Literal, TypeAlias
 
 from circuitlint.definition.text import Path
 from circuitlint.limits.models import Limit, LimitSpec
-from circuitlint.quantity import Quantity
+from circuitlint.quantity import Quantity, show
+from circuitlint.study.data import Datum
+from circuitlint.study.solving import UNSETTLED
 from circuitlint.study.study import CircuitStudy, Figure
 from circuitlint.study.worksheet import Lack
 
@@ -84,6 +86,21 @@ def ask(circuit: CircuitStudy, figure: str, state: str, of: str = "") -> Asked:
     return Asked(figure, state, of, circuit.figure(figure, state, of), circuit.tag)
 
 
+def stated(circuit: CircuitStudy, path: str) -> Asked:
+    """Ask for a datum as the definition states it, such as `protection.breaking_capacity`, to hold it against a limit."""
+    place, _, word = path.rpartition(".")
+    datum = circuit.stated(path)
+    if datum is None:
+        return Asked(word.replace("_", "-"), "", place, Lack((path,), "it is not stated"), circuit.tag)
+    found = Figure(word.replace("_", "-"), place, "", datum.dimension, datum.nominal, datum.low, datum.high)
+    return Asked(found.name, "", place, found, circuit.tag)
+
+
+def runs_away(asked: Asked) -> bool:
+    """Whether a figure is lacking because temperatures do not settle within the tolerances: worse than any figure."""
+    return isinstance(asked.found, Lack) and asked.found.why == UNSETTLED
+
+
 def at_least(asked: Asked, limit: Limit | None, *, help: str = "", at: Path | None = None) -> Comparison:
     """The figure must not be below the limit. `at` is the path of the part at fault within the circuit."""
     return Comparison(asked, "at least", limit, help, at)
@@ -94,15 +111,17 @@ def at_most(asked: Asked, limit: Limit | None, *, help: str = "", at: Path | Non
     return Comparison(asked, "at most", limit, help, at)
 
 
-def share_of(limit: Limit | None, quantity: Quantity | None, set_by: str) -> Limit | None:
+def share_of(limit: Limit | None, quantity: Quantity | Datum | None, set_by: str, *, highest: bool = False) -> Limit | None:
     """A limit that the ruleset states as a share of a datum, such as a meter's range; None where either is not given.
 
-    The datum's lowest value is taken, so that its own tolerance counts against it.
+    The datum's lowest value is taken, so that its own tolerance counts against it; for a figure that must be at least the
+    share, say `highest`.
     """
     if limit is None or quantity is None:
         return None
-    value = limit.value * quantity.low
-    made = Quantity(value, value, value, quantity.dimension, f"{limit.quantity.text} of {quantity.text}")
+    end = quantity.high if highest else quantity.low
+    value, of = limit.value * end, quantity.text or show(end, quantity.dimension)
+    made = Quantity(value, value, value, quantity.dimension, f"{limit.quantity.text} of {of}")
     return replace(limit, quantity=made, set_by=f"{limit.set_by}, {set_by}")
 
 

@@ -8,7 +8,7 @@ from collections.abc import Callable
 from circuitlint.physics.formula import Formula
 from circuitlint.quantity import show
 from circuitlint.review.record import Input
-from circuitlint.si import ANGLE, DIMENSIONS, Dimension
+from circuitlint.si import ANGLE, DIMENSIONS, OF_TABLES, Dimension
 from circuitlint.study.study import CircuitStudy, Figure
 from circuitlint.study.worksheet import Key
 
@@ -62,7 +62,7 @@ def put_in(formula: Formula[..., object], inputs: tuple[Input, ...]) -> str:
 
 
 def _number(one: Input) -> str:
-    shown = show(one.value, DIMENSIONS[one.dimension])
+    shown = show(one.value, DIMENSIONS.get(one.dimension) or OF_TABLES[one.dimension])
     return shown if one.angle is None else f"{shown} ∠ {show(one.angle, ANGLE)}".replace("∠ -", "∠ −")
 
 

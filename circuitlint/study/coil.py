@@ -5,14 +5,20 @@ from __future__ import annotations
 from circuitlint import si
 from circuitlint.definition.loads import COIL_NAMEPLATE, Coil, Gap
 from circuitlint.physics import coil_closing, coil_heating, phasors, power_factor, steps, switching_on
+from circuitlint.physics.one_ports import NetworkKind
 from circuitlint.sources import Source
-from circuitlint.study import nameplate
+from circuitlint.study import nameplate, saturating
 from circuitlint.study.data import DataSheet
 from circuitlint.study.plan import LoadKind, Plan
 from circuitlint.study.worksheet import Key
 from circuitlint.tables import materials
 
 REFERENCE = 20.0
+SERVICE = (
+    "rated_duty", "lowest_voltage", "highest_voltage", "pull_in_voltage", "drop_out_voltage", "drop_out_current",
+    "saturation_current",
+)
+"""What the plate says of service, beside what the winding is known from."""
 RATED_AMBIENT = Source("IEC 60947-1", "6.1.1, upper ambient temperature in service", known="value from memory")
 CONVENTION = Source("winding resistances are stated at 20 °C unless said otherwise", known="common practice")
 RATED_AS_SUPPLIED = Source("rated for the supply it is fed from, where the plate says nothing else", known="common practice")
@@ -29,7 +35,7 @@ class CoilKind(LoadKind[Coil]):
 
     def data(self, part: Coil, place: str, into: DataSheet) -> None:
         """The nameplate as it stands, the winding's material, and what its heating needs."""
-        for word in (*COIL_NAMEPLATE, "core_resistance", "thermal_resistance", "temperature_rise"):
+        for word in (*COIL_NAMEPLATE, "core_resistance", "thermal_resistance", "temperature_rise", *SERVICE):
             into.state(f"{place}.{word}", getattr(part, word))
         if not into.state(f"{place}.resistance_at", part.resistance_at):
             into.assume(f"{place}.resistance_at", si.TEMPERATURE, REFERENCE, REFERENCE, REFERENCE, CONVENTION)
@@ -37,7 +43,9 @@ class CoilKind(LoadKind[Coil]):
         into.table(f"{place}.inferred_zero", si.TEMPERATURE_RISE, zero, source)
         into.token(f"{place}.armature", part.armature or "")
         into.token(f"{place}.made_for", part.made_for or "")
+        into.token(f"{place}.thermal_class", part.thermal_class or "")
         self._rated(part, place, into)
+        saturating.collect(part.saturation, place, into)
         if part.open_gap is not None:
             for word in Gap.model_fields:
                 into.state(f"{place}.open_gap.{word}", getattr(part.open_gap, word))
@@ -61,7 +69,7 @@ class CoilKind(LoadKind[Coil]):
         resistance = self._resistance(plan, place)
         if plan.direct:
             return put("impedance phasor", place, steps.resistive_impedance, figure=False, resistance=resistance)
-        reactance = put("reactance", place, phasors.reactance_of_inductance, inductance=self._inductance(plan, place),
+        reactance = put("reactance", place, phasors.reactance_of_inductance, inductance=self._working(plan, place),
                         frequency=plan.frequency())
         if nameplate.has_core(plan, place):
             return put("impedance phasor", place, steps.impedance_with_core, figure=False, resistance=resistance,
@@ -90,6 +98,8 @@ class CoilKind(LoadKind[Coil]):
     def _thermal_resistance(self, plan: Plan, place: str) -> Key:
         if plan.has(f"{place}.thermal_resistance"):
             return plan.datum(f"{place}.thermal_resistance")
+        if saturating.saturates(plan, place):
+            return plan.sheet.lack("thermal-resistance", place, f"{place}.thermal_resistance", why=HEAT_NOT_KNOWN)
         needs = [f"{place}.temperature_rise"] if not plan.has(f"{place}.temperature_rise") else []
         if not plan.has(f"{place}.rated_voltage"):
             needs.append(f"{place}.rated_voltage")
@@ -126,22 +136,46 @@ class CoilKind(LoadKind[Coil]):
             return nameplate.closed_inductance(plan, place)
         return nameplate.open_inductance(plan, place)
 
+    def _unsaturated(self, plan: Plan, place: str) -> Key | None:
+        return None if plan.token(f"{place}.saturation.table") != "0" else nameplate.closed_inductance(plan, place)
+
+    def _working(self, plan: Plan, place: str) -> Key:
+        if saturating.saturates(plan, place):
+            return saturating.working_inductance(plan, place, self._unsaturated(plan, place))
+        return self._inductance(plan, place)
+
+    def network(self, plan: Plan, place: str) -> tuple[NetworkKind, tuple[Key, ...]] | None:
+        """Resistance and inductance in series, the core's resistance across the inductance where the plate tells it."""
+        if saturating.saturates(plan, place):
+            return None
+        if not nameplate.has_core(plan, place):
+            return "coil", (plan.phasor("impedance", place),)
+        return "core", (Key("resistance", place), Key("reactance", place), nameplate.core_resistance(plan, place))
+
     def figures(self, plan: Plan, place: str) -> None:
         """Voltages across its resistance and inductance, losses, temperature, time constant, stored energy, flux."""
         put = plan.sheet.put
         current, resistance = Key("current", place), Key("resistance", place)
-        inductance = self._inductance(plan, place)
         put("resistive-voltage", place, phasors.resistive_voltage, current=current, resistance=resistance)
         put("winding-loss", place, power_factor.active_power, current=current, resistance=resistance)
-        put("time-constant", place, switching_on.time_constant, inductance=inductance, resistance=resistance)
-        if plan.direct:
-            put("stored-energy", place, switching_on.stored_energy, inductance=inductance, current=current)
+        if saturating.saturates(plan, place):
+            saturating.tell(plan, place, self._unsaturated(plan, place))
+            for name in ("time-constant", "stored-energy"):
+                plan.sheet.lack(name, place, why=saturating.NOT_CONSTANT)
         else:
-            self._alternating(plan, place, inductance)
+            inductance = self._inductance(plan, place)
+            put("time-constant", place, switching_on.time_constant, inductance=inductance, resistance=resistance)
+            if plan.direct:
+                put("stored-energy", place, switching_on.stored_energy, inductance=inductance, current=current)
+            else:
+                put("stored-energy", place, steps.stored_energy_at_crest, note="at the current's crest", inductance=inductance,
+                    current=current)
+        if not plan.direct:
+            self._alternating(plan, place)
         if plan.token(f"{place}.rated_voltage") == "stated":
             put("voltage-share", place, steps.share_of_rated_voltage, voltage=Key("voltage", place),
                 rated_voltage=plan.datum(f"{place}.rated_voltage"))
-        if plan.state.name == "cold":
+        if plan.state.name == "cold" and not saturating.saturates(plan, place):
             nameplate.derived_again(plan, place)
         if plan.state.hot and plan.sheet.has(resistance):
             rise = put("winding-rise", place, coil_heating.winding_rise, loss=Key("active-power", place),
@@ -149,7 +183,7 @@ class CoilKind(LoadKind[Coil]):
             warm = put("winding-temperature", place, steps.warmed_temperature, ambient=plan.datum("ambient"), rise=rise)
             plan.sheet.settle(Key("settled winding temperature", place), warm, plan.datum("ambient"))
 
-    def _alternating(self, plan: Plan, place: str, inductance: Key) -> None:
+    def _alternating(self, plan: Plan, place: str) -> None:
         put = plan.sheet.put
         current = Key("current", place)
         if nameplate.has_core(plan, place):
@@ -157,8 +191,6 @@ class CoilKind(LoadKind[Coil]):
                 resistance=Key("resistance", place))
         else:
             put("inductive-voltage", place, phasors.inductive_voltage, current=current, reactance=Key("reactance", place))
-        put("stored-energy", place, steps.stored_energy_at_crest, note="at the current's crest", inductance=inductance,
-            current=current)
         if plan.has(f"{place}.rated_voltage") and plan.has(f"{place}.rated_frequency"):
             put("flux-ratio", place, coil_closing.flux_ratio, voltage=Key("voltage", place), frequency=plan.frequency(),
                 rated_voltage=plan.datum(f"{place}.rated_voltage"), rated_frequency=plan.datum(f"{place}.rated_frequency"))

@@ -27,8 +27,8 @@ def study(
     studies: list[CircuitStudy] = []
     groups: dict[Any, list[CircuitStudy]] = {}
     boards = study_boards(installation, kinds) if installation.boards else {}
-    unknown = _unknown(installation, kinds) if installation.boards else {}
     others = {tag: drop for state in boards.values() for tag, drop in state.drops.items()}
+    unknown = _unknown(installation, others) if installation.boards else {}
     for definition in installation.circuits:
         tag = definition.entry.tag
         one = prepare(definition, installation, kinds, others.get(tag), unknown.get(tag, ()))
@@ -106,19 +106,18 @@ def study_boards(installation: Installation, kinds: Kinds) -> dict[str, BoardSta
     return found
 
 
-def _unknown(installation: Installation, kinds: Kinds) -> dict[str, tuple[str, ...]]:
-    """For each circuit, the tags of others on boards of the same supply whose current cannot be known."""
+def _unknown(installation: Installation, known: Collection[str]) -> dict[str, tuple[str, ...]]:
+    """For each circuit on a board, the tags of others on boards of the same supply whose current cannot be known."""
     unknown: dict[str, list[str]] = {}
     fed: dict[str, str] = {}
     for definition in installation.circuits:
-        one = prepare(definition, installation, kinds, 0j)
-        if not one.feed.boards:
+        entry = definition.entry
+        feed = feed_of(entry, installation)
+        if not feed.boards:
             continue
-        fed[one.tag] = one.feed.supply_name
-        state = states_of(one.system, ("cold",))[0]
-        sheet = worksheet(state, one.system, one.data, one.tree, one.way, kinds)
-        if Key("current phasor", "") in sheet.lacks:
-            unknown.setdefault(one.feed.supply_name, []).append(one.tag)
+        fed[entry.tag] = feed.supply_name
+        if entry.tag not in known:
+            unknown.setdefault(feed.supply_name, []).append(entry.tag)
     return {tag: tuple(other for other in unknown.get(supply, ()) if other != tag) for tag, supply in fed.items()}
 
 
@@ -140,6 +139,8 @@ def _loadings(alone: Sequence[CircuitStudy], kinds: Kinds) -> tuple[list[Loading
             continue
         values = sheet.only([current, *(Key("voltage phasor", place) for place in one.way)]).run(
             {Key("", path): datum.nominal for path, datum in one.data.data.items()})
+        if not np.isfinite(values[current]):
+            continue
         turned = complex(values[current]) * source / abs(source)
         upstream = sum((complex(values[Key("voltage phasor", place)]) for place in one.way if place.startswith("feeder")), 0j)
         arriving = source - upstream * source / abs(source) - one.data.data["others' drop in phase"].nominal * source \

@@ -6,8 +6,10 @@ from types import MappingProxyType
 
 from circuitlint.definition.loads import Capacitor, Impedance, Resistor
 from circuitlint.physics import phasors, steps
+from circuitlint.physics.one_ports import NetworkKind
 from circuitlint.study.coil import CoilKind
 from circuitlint.study.data import DataSheet
+from circuitlint.study.devices import BallastKind, TransformerKind
 from circuitlint.study.motor import MotorKind
 from circuitlint.study.plan import Kinds, LoadKind, Plan
 from circuitlint.study.worksheet import Key
@@ -29,6 +31,10 @@ class ResistorKind(LoadKind[Resistor]):
         return plan.sheet.put("impedance phasor", place, steps.resistive_impedance, figure=False,
                               resistance=plan.datum(f"{place}.resistance"))
 
+    def network(self, plan: Plan, place: str) -> tuple[NetworkKind, tuple[Key, ...]]:
+        """A resistance alone."""
+        return "resistor", (plan.phasor("impedance", place),)
+
 
 class CapacitorKind(LoadKind[Capacitor]):
     """A capacitance without loss."""
@@ -37,8 +43,10 @@ class CapacitorKind(LoadKind[Capacitor]):
     model = Capacitor
 
     def data(self, part: Capacitor, place: str, into: DataSheet) -> None:
-        """Its capacitance."""
+        """Its capacitance, its rated voltage and the resistor across it."""
         into.state(f"{place}.capacitance", part.capacitance)
+        into.state(f"{place}.rated_voltage", part.rated_voltage)
+        into.state(f"{place}.discharge_resistance", part.discharge_resistance)
 
     def impedance(self, plan: Plan, place: str) -> Key | None:
         """Its reactance, leading; no direct current passes."""
@@ -53,6 +61,10 @@ class CapacitorKind(LoadKind[Capacitor]):
         if not plan.direct:
             plan.sheet.put("capacitive-voltage", place, phasors.inductive_voltage, current=Key("current", place),
                            reactance=Key("reactance", place))
+
+    def network(self, plan: Plan, place: str) -> tuple[NetworkKind, tuple[Key, ...]]:
+        """A capacitance alone; a resistor that drains it is left out, as in its impedance."""
+        return "capacitor", (plan.phasor("impedance", place),)
 
 
 class ImpedanceKind(LoadKind[Impedance]):
@@ -81,6 +93,6 @@ class ImpedanceKind(LoadKind[Impedance]):
                               reactance=reactance)
 
 
-_MADE = (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind(), MotorKind())
+_MADE = (CoilKind(), ResistorKind(), CapacitorKind(), ImpedanceKind(), MotorKind(), TransformerKind(), BallastKind())
 CORE: Kinds = MappingProxyType({kind.name: kind for kind in _MADE})
 """The load kinds every definition knows."""

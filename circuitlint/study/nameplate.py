@@ -79,7 +79,8 @@ def closed_inductance(plan: Plan, place: str) -> Key:
     if plan.has(f"{place}.inductance"):
         return plan.datum(f"{place}.inductance")
     reactance = _reactance(plan, place)
-    return plan.sheet.put("inductance", place, phasors.inductance_of_reactance, reactance=reactance,
+    name = "unsaturated-inductance" if plan.token(f"{place}.saturation") else "inductance"
+    return plan.sheet.put(name, place, phasors.inductance_of_reactance, reactance=reactance,
                           frequency=plan.datum(f"{place}.rated_frequency"))
 
 

@@ -8,8 +8,9 @@ from circuitlint import si
 from circuitlint.definition.loads import LoadEntry
 from circuitlint.definition.models import Cable, CircuitEntry
 from circuitlint.errors import OutOfTable
-from circuitlint.physics import conductor_heating, conductors, feeding, phasors, power_factor, steps, switching_on
+from circuitlint.physics import conductor_heating, conductors, feeding, phasors, power_factor, steps
 from circuitlint.sources import Source
+from circuitlint.study import protection, service, switching
 from circuitlint.study.data import DataSheet, Datum
 from circuitlint.study.extras import write_extras
 from circuitlint.study.feeding import Feed
@@ -66,6 +67,8 @@ def collect(
         _exact(sheet, f"{place}.count", si.RATIO, float(number), Source("the definition"))
     for place, kind, part in leaves_of(load, "load"):
         kinds[kind].data(part, place, sheet)
+    protection.collect(entry, feed, sheet)
+    service.collect(entry, feed, sheet)
     return sheet
 
 
@@ -253,7 +256,9 @@ def worksheet(state: State, system: str, present: DataSheet, tree: Node, way: tu
     if state.name == "switch-on" and load is None:
         plan.sheet.lack("switch-on-peak", "", "the source's impedance", why="only the source limits what charges a capacitor")
     elif state.name == "switch-on":
-        _switch_on(plan, tree, kinds)
+        switching.write_peak(plan, tree, way, kinds)
+    protection.write(plan, way)
+    service.write(plan, way)
     write_extras(plan, kinds)
     return plan.sheet.finish()
 
@@ -328,26 +333,3 @@ def _drop(plan: Plan, terminal: Key) -> None:
     receiving = put("terminal-voltage", "", phasors.magnitude_of_voltage, voltage=terminal)
     drop = put("voltage-drop", "", conductors.voltage_drop, sending=Key("voltage", ""), receiving=receiving)
     put("voltage-drop-share", "", conductors.drop_share, drop=drop, nominal=plan.datum("supply.nominal_voltage"))
-
-
-def _switch_on(plan: Plan, tree: Node, kinds: Kinds) -> None:
-    """The crest of the first current wave. The closed form holds for one current through resistance and inductance."""
-    put = plan.sheet.put
-    if plan.direct:
-        put("switch-on-peak", "", switching_on.direct_current, voltage=Key("voltage", ""),
-            resistance=Key("resistance", ""))
-        return
-    if not _one_inductive_path(tree, kinds):
-        plan.sheet.lack("switch-on-peak", "", "a load of coils, resistors and impedances in series",
-                        why="the closed form holds for one current through resistance and inductance only")
-        return
-    put("switch-on-peak", "", switching_on.switch_on_peak, current_rms=Key("current", ""),
-        resistance=Key("resistance", ""), reactance=Key("reactance", ""))
-
-
-def _one_inductive_path(node: Node, kinds: Kinds) -> bool:
-    if node.kind == "parallel":
-        return len(node.nodes) == 1 and _one_inductive_path(node.nodes[0], kinds)
-    if node.kind in ("series", "several", "delta"):
-        return all(_one_inductive_path(one, kinds) for one in node.nodes)
-    return kinds[node.kind].resistance_and_inductance

@@ -10,6 +10,7 @@ from typing import Any, ClassVar, Generic, TypeAlias, TypeVar
 from pydantic import BaseModel
 
 from circuitlint.physics import feeding, phasors, power_factor, steps
+from circuitlint.physics.one_ports import NetworkKind
 from circuitlint.study.data import DataSheet
 from circuitlint.study.states import State
 from circuitlint.study.worksheet import Key, Worksheet
@@ -95,6 +96,13 @@ class LoadKind(ABC, Generic[M]):
 
     def figures(self, plan: Plan, place: str) -> None:
         """Write the part's own figures; its `current` and `voltage` are there by now."""
+
+    def network(self, plan: Plan, place: str) -> tuple[NetworkKind, tuple[Key, ...]] | None:
+        """What the part is to a sudden voltage, and the keys of its numbers; None where it is not linear or not known.
+
+        A `coil` takes its impedance phasor R + jX, a `resistor` and a `capacitor` theirs, a `core` R, X and core resistance.
+        """
+        return ("coil", (plan.phasor("impedance", place),)) if self.resistance_and_inductance else None
 
     def label(self, part: M) -> tuple[str, ...]:
         """What a drawing prints beside the part."""

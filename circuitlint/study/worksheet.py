@@ -49,11 +49,12 @@ class Lack:
 
 @dataclass(frozen=True, slots=True)
 class Feedback:
-    """A guess, the figure it must come to equal, and where it starts."""
+    """A guess, the figure it must come to equal, where it starts, and the magnitude below which it need not agree."""
 
     guess: Key
     settles_at: Key
     start: Key
+    scale: float = 300.0
 
 
 TOLERANCE = 1e-12
@@ -110,9 +111,12 @@ class Worksheet:
         self.assumed[key] = dimension
         return key
 
-    def settle(self, guess: Key, at: Key, start: Key) -> None:
-        """Bind a guess to the figure it must come to equal. A lacking figure makes the guess's own figures lacking too."""
-        self.feedback.append(Feedback(guess, at, start))
+    def settle(self, guess: Key, at: Key, start: Key, scale: float = 300.0) -> None:
+        """Bind a guess to the figure it must come to equal, to 1e-12 of its magnitude and of `scale` together.
+
+        A lacking figure makes the guess's own figures lacking too.
+        """
+        self.feedback.append(Feedback(guess, at, start, scale))
 
     def has(self, key: Key) -> bool:
         """Whether the figure can be given."""
@@ -212,8 +216,8 @@ class Worksheet:
             guesses = [values[one.guess] for one in self.feedback]
             found = [values[one.settles_at] for one in self.feedback]
             error = 0.0
-            for old, new in zip(guesses, found, strict=True):
-                error = np.maximum(error, np.abs(new - old) / (np.abs(new) + 300.0))
+            for one, old, new in zip(self.feedback, guesses, found, strict=True):
+                error = np.maximum(error, np.abs(new - old) / (np.abs(new) + one.scale))
             if not np.any(error > TOLERANCE):
                 break
             if number % 3 == 2:

@@ -5,11 +5,30 @@ from __future__ import annotations
 from importlib.resources import files
 
 from circuitlint.authoring import ReadingRule, Rule, offers
-from circuitlint_rules.conductor import ConductorCurrent, ConductorHeating
+from circuitlint_rules.compensation import CapacitorDischarge, CapacitorStress, OverCorrection, Resonance
+from circuitlint_rules.conductor import ConductorCurrent, ConductorHeating, MinimumSection
 from circuitlint_rules.measurement import MeterRange
+from circuitlint_rules.meters import MeterBurden, MeterCategory, MeterResolution, MeterWaveform, OhmmeterOnACoil
 from circuitlint_rules.plate import NameplateContradiction, SupplyMatch
+from circuitlint_rules.protection import (
+    BreakingCapacity,
+    FaultHeating,
+    FaultLoop,
+    NuisanceTrip,
+    OverloadCoordination,
+)
 from circuitlint_rules.readings import CalibrationInDate, CategoryStated, WithinRange
-from circuitlint_rules.supply import MinimumPowerFactor, VoltageDrop
+from circuitlint_rules.silence import MissingData
+from circuitlint_rules.supply import MinimumPowerFactor, OperatingVoltage, VoltageDrop
+from circuitlint_rules.switching import (
+    ContactDuty,
+    HeldIn,
+    MinimumContactLoad,
+    ReleaseTime,
+    StoredEnergy,
+    SwitchOffVoltage,
+)
+from circuitlint_rules.winding import PullInWhenHot, SaturationCurrent, StuckOpen, WindingTemperature
 
 
 @offers
@@ -17,6 +36,11 @@ def circuitlint_rules() -> list[type[Rule]]:
     """The common rules."""
     return [
         MinimumPowerFactor, MeterRange, ConductorHeating, ConductorCurrent, VoltageDrop, SupplyMatch, NameplateContradiction,
+        OperatingVoltage, WindingTemperature, StuckOpen, PullInWhenHot, SaturationCurrent,
+        MinimumSection, OverloadCoordination, NuisanceTrip, BreakingCapacity, FaultLoop, FaultHeating,
+        ContactDuty, SwitchOffVoltage, ReleaseTime, StoredEnergy, HeldIn, MinimumContactLoad,
+        OverCorrection, CapacitorStress, CapacitorDischarge, Resonance,
+        MeterCategory, MeterBurden, MeterResolution, MeterWaveform, OhmmeterOnACoil, MissingData,
     ]
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from circuitlint.authoring import (
+    AREA,
     LOSS_PER_LENGTH,
     RATIO,
     TEMPERATURE,
@@ -15,7 +16,9 @@ from circuitlint.authoring import (
     Rule,
     Unknown,
     ask,
+    at_least,
     at_most,
+    stated,
 )
 
 
@@ -79,3 +82,35 @@ class ConductorCurrent(Rule):
             return
         for index in range(len(circuit.entry.cable)):
             yield at_most(ask(circuit, "ampacity-share", "steady", f"cable[{index}]"), limits.get("share_of_ampacity"))
+
+
+class MinimumSection(Rule):
+    """The section of each run against the smallest that is laid for its use."""
+
+    name = "minimum-section"
+    title = "Smallest section"
+    purpose = "A conductor thinner than its use allows breaks in handling and at its terminals, whatever current it carries."
+    applies_to = "every circuit with a cable"
+    figures = ()
+    states = ()
+    needs = ("cable with section",)
+    helps = "a larger section"
+    limits = {
+        "power": LimitSpec(AREA, "smallest section of copper above extra-low voltage"),
+        "control": LimitSpec(AREA, "smallest section of copper at extra-low voltage"),
+        "aluminium": LimitSpec(AREA, "smallest section of aluminium"),
+    }
+
+    def applies(self, circuit: CircuitStudy) -> bool:
+        """Where there is a cable, or where nothing is said of one."""
+        return circuit.entry.cable is None or len(circuit.entry.cable) > 0
+
+    def check(self, circuit: CircuitStudy, limits: Limits) -> Iterator[Outcome]:
+        """Each run."""
+        if circuit.entry.cable is None:
+            yield Unknown("section", ("cable, or `cable: []` where there is none",))
+            return
+        extra_low = circuit.data.data["voltage to earth"].nominal <= (120.0 if circuit.system == "dc" else 50.0)
+        for index, run in enumerate(circuit.entry.cable):
+            use = "aluminium" if run.conductor == "aluminium" else "control" if extra_low else "power"
+            yield at_least(stated(circuit, f"cable[{index}].section"), limits.get(use))

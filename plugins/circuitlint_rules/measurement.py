@@ -4,7 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from circuitlint.authoring import RATIO, CircuitStudy, Holds, Limits, LimitSpec, Outcome, Rule, Unknown, ask, at_most, share_of
+from circuitlint.authoring import (
+    RATIO,
+    CircuitStudy,
+    Holds,
+    Limits,
+    LimitSpec,
+    Outcome,
+    Rule,
+    Unknown,
+    ask,
+    at_most,
+    share_of,
+)
 
 LOOP_STATES = ("cold", "steady", "direct-current")
 

@@ -61,10 +61,19 @@ class SupplyMatch(Rule):
                 yield Fact(aspect, what, why="the plate against the supply's system", at=at)
             else:
                 yield Holds(aspect, f"{place} is made for {made_for}, as it is fed", at=at)
-            if circuit.choice(f"{place}.rated_voltage"):
-                asked = ask(circuit, "voltage-share" if circuit.system == "dc" else "flux-ratio", "cold", place)
-                yield at_most(asked, limits.get("largest_flux"), at=at)
-                yield at_least(asked, limits.get("smallest_flux"), at=at)
+            yield from self._ratio(circuit, limits, place)
+
+    def _ratio(self, circuit: CircuitStudy, limits: Limits, place: str) -> Iterator[Outcome]:
+        """Volts per hertz, or volts on direct current; what the plate does not tell is not taken to fit the supply."""
+        direct, at = circuit.system == "dc", path_of(place)
+        words = ("rated_voltage",) if direct else ("rated_voltage", "rated_frequency")
+        lacking = tuple(f"{place}.{word}" for word in words if not circuit.choice(f"{place}.{word}"))
+        if lacking:
+            yield Unknown(f"rating of {place}", lacking, "what the coil is made for is not stated in full", "cold", at)
+            return
+        asked = ask(circuit, "voltage-share" if direct else "flux-ratio", "cold", place)
+        yield at_most(asked, limits.get("largest_flux"), at=at)
+        yield at_least(asked, limits.get("smallest_flux"), at=at)
 
 
 DERIVED = ("resistance", "reactance", "impedance", "quality_factor", "current", "active_power", "apparent_power", "power_factor")
@@ -99,7 +108,9 @@ class NameplateContradiction(Rule):
                 found = circuit.figure(f"derived-{word.replace('_', '-')}", "cold", place)
                 aspect, at = f"{word.replace('_', ' ')} of {place}", (*path_of(place), word)
                 if stated is None or isinstance(found, Lack):
+                    rated = tuple(f"{place}.{one}" for one in ("rated_voltage", "rated_frequency"))
                     needs = found.needs if isinstance(found, Lack) else ()
+                    needs = needs or tuple(path for path in rated if not circuit.choice(path))
                     yield Unknown(aspect, needs, "it cannot be derived from the rest of the plate", state="cold", at=at)
                     continue
                 yield self._meet(found, stated.low, stated.high, stated.text, aspect, at)

@@ -1,10 +1,27 @@
-"""What the supply sees and what reaches the load: power factor, voltage drop."""
+"""What the supply sees and what reaches the load: power factor, voltage drop, the coil's band."""
 
 from __future__ import annotations
 
 from collections.abc import Iterator
 
-from circuitlint.authoring import RATIO, CircuitStudy, Figure, Limits, LimitSpec, Outcome, Rule, ask, at_least, at_most
+from circuitlint.authoring import (
+    RATIO,
+    VOLTAGE,
+    CircuitStudy,
+    Datum,
+    Figure,
+    Limits,
+    LimitSpec,
+    Outcome,
+    Quantity,
+    Rule,
+    Unknown,
+    ask,
+    at_least,
+    at_most,
+    path_of,
+    share_of,
+)
 
 
 class MinimumPowerFactor(Rule):
@@ -54,3 +71,54 @@ class VoltageDrop(Rule):
         for state in self.states:
             limit = limits.get("switch_on" if state == "switch-on" else "running")
             yield at_most(ask(circuit, "voltage-drop-share", state), limit, at=("cable",))
+
+
+class OperatingVoltage(Rule):
+    """Voltage at the coil's own terminals against the band it works in."""
+
+    name = "operating-voltage"
+    title = "Coil voltage within its band"
+    purpose = "Below its band a coil chatters or does not close, and a contactor's contacts weld; above it the coil overheats."
+    applies_to = "circuits with a coil that has an armature"
+    figures = ("voltage@load",)
+    states = ("switch-on", "cold", "steady")
+    needs = ("rated_voltage", "lowest_voltage and highest_voltage, as shares of it", "open_gap", "cable")
+    helps = "a larger section, a shorter run, a coil of another rated voltage or a wider band, or a steadier supply"
+    limits = {
+        "share_of_lower": LimitSpec(RATIO, "smallest voltage at switch-on as a share of the lower end of the coil's band"),
+        "share_of_upper": LimitSpec(RATIO, "largest voltage in service as a share of the upper end of the coil's band"),
+    }
+
+    def applies(self, circuit: CircuitStudy) -> bool:
+        """Where a coil may have an armature."""
+        return any(circuit.choice(f"{place}.armature") != "none" for place in circuit.leaves("coil"))
+
+    def check(self, circuit: CircuitStudy, limits: Limits) -> Iterator[Outcome]:
+        """At switch-on against the lower end, running against the upper end."""
+        for place in circuit.leaves("coil"):
+            if circuit.choice(f"{place}.armature") == "none":
+                continue
+            path = f"{place}.rated_voltage"
+            rated = circuit.data.data.get(path) if circuit.choice(path) else None
+            if rated is None:
+                yield Unknown(f"voltage of {place}", (path,), "the voltage it is made for is not stated", at=path_of(place))
+                continue
+            yield from self._end(circuit, limits, place, rated, "lowest_voltage")
+            yield from self._end(circuit, limits, place, rated, "highest_voltage")
+
+    def _end(self, circuit: CircuitStudy, limits: Limits, place: str, rated: Datum, word: str) -> Iterator[Outcome]:
+        """One end of the band, a share of the rated voltage."""
+        path, least = f"{place}.{word}", word == "lowest_voltage"
+        stated = circuit.stated(path)
+        if stated is None:
+            why = "between which shares of its rated voltage it works is not stated; 85 % and 110 % are usual (IEC 60947-4-1)"
+            yield Unknown(f"{word.replace('_', ' ')} of {place}", (path,), why, at=path_of(place))
+            return
+        share = stated.high if least else stated.low
+        end = Quantity.of(share * rated.nominal, VOLTAGE)
+        if least:
+            limit = share_of(limits.get("share_of_lower"), end, path, highest=True)
+            yield at_least(ask(circuit, "voltage", "switch-on", place), limit)
+            return
+        for state in ("cold", "steady"):
+            yield at_most(ask(circuit, "voltage", state, place), share_of(limits.get("share_of_upper"), end, path))

@@ -15,6 +15,8 @@ supplies:
     system: single-phase
     voltage: 230 V +10/-6 %
     frequency: 50 Hz ± 1 %
+    fault_current: 1 kA
+    measurement_category: III
   control:
     system: single-phase
     voltage: 48 V ± 10 %
@@ -63,6 +65,8 @@ def _circuit(number: int, draw: random.Random) -> Iterator[str]:
     yield f"      connection: {draw.choice(('in-line', 'clamp'))}"
     yield "      range: 10 A"
     yield "      fuse: 10 A"
+    yield "      category: CAT III 600 V"
+    yield "      responds: true rms"
     yield "    load:"
     yield from _load(draw, resistance, inductance, direct, volts)
 
@@ -77,6 +81,10 @@ def _load(draw: random.Random, resistance: float, inductance: float, direct: boo
         f"  inductance: {1e3 * inductance * draw.uniform(0.2, 0.5):.4g} mH ± 15 %",
         f"rated_voltage: {volts:g} V",
         f"temperature_rise: {draw.randint(35, 70)} K",
+        'thermal_class: "130"',
+        "lowest_voltage: 80 %",
+        "highest_voltage: 120 %",
+        "pull_in_voltage: 17 V" if direct else "rated_frequency: 50 Hz",
     )
     if shape == "alone":
         yield "      coil:"

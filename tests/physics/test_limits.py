@@ -34,7 +34,7 @@ from circuitlint.physics.phasors import (
     series_impedance,
 )
 from circuitlint.physics.power_factor import active_power, complex_power, reactive_power
-from circuitlint.physics.steps import impedance_with_core
+from circuitlint.physics.steps import impedance_of_running_motor, impedance_with_core
 from circuitlint.physics.switching_off import clamp_energy, release_time
 from circuitlint.physics.three_phases import neutral_current
 from circuitlint.physics.wires import skin_effect
@@ -234,6 +234,12 @@ def test_neutral_current_is_what_the_three_magnitudes_leave(first: float, second
     left = neutral_current(currents=(first * turns[0], second * turns[1], third * turns[2]))
     squares = first**2 + second**2 + third**2 - first * second - second * third - third * first
     assert abs(complex(left)) == pytest.approx(math.sqrt(max(squares, 0.0)), abs=1e-5)
+
+
+def test_a_motor_below_half_its_voltage_has_no_running_point() -> None:
+    voltages = np.array([230.0, 115.1, 115.0, 60.0, math.nan])
+    found = impedance_of_running_motor(voltage=voltages, rated_voltage=230.0, apparent_power=1000.0, power_factor=0.8)
+    assert np.array_equal(np.isnan(found), [False, False, True, True, True])
 
 
 @given(st.floats(1e-6, 2.8))
