@@ -97,6 +97,8 @@ RUNNING = {
     "a solution exchanged": "for one in circuit.solutions.values():\n    one.nominal = one.nominal * 0\nyield Fact('x', 'x')",
     "figures overwritten": "for one in circuit.solutions.values():\n    one.nominal[:] = 0.0\nyield Fact('x', 'x')",
     "data overwritten": "circuit.data.data.clear()\nyield Fact('x', 'x')",
+    "data exchanged": "circuit.data.data = {}\nyield Fact('x', 'x')",
+    "a worksheet exchanged": "for one in circuit.solutions.values():\n    one.sheet.lacks = {}\nyield Fact('x', 'x')",
     "limits overwritten": "limits['circuit'] = None\nyield Fact('x', 'x')",
 }
 """What a rule does on a circuit, by misbehaviour; each loses the rule there."""
@@ -120,6 +122,8 @@ TOLD_OF_RUNNING = {
     "a list written to": "it changes the study",
     "a study emptied": "it changes the study",
     "a solution exchanged": "it changes the study",
+    "data exchanged": "it changes the study",
+    "a worksheet exchanged": "it changes the study",
     "figures overwritten": "read-only",
     "data overwritten": "attribute 'clear'",
     "limits overwritten": "does not support item assignment",

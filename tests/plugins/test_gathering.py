@@ -131,10 +131,10 @@ def test_the_list_tells_name_version_place_offers_and_failures_and_ends_with_sta
     good, bad = written(tmp_path, good=GOOD, bad="1 / 0\n") / "good.py", tmp_path / "bad.py"
     assert main(["plugins", "--plugin", str(good)]) == 0
     printed = capsys.readouterr().out
-    for word in ("circuitlint_rules", "voltage-drop", "low-voltage-50hz", "good", str(good)[-20:], "rule         house-check"):
-        assert word in printed.replace("\n               ", "")
+    for word in ("circuitlint_rules", "voltage-drop", "low-voltage-50hz", "good", str(good)[-20:], "rule              house-check"):
+        assert word in printed.replace("\n" + " " * 20, "")
     assert main(["plugins", "--plugin", str(good), "--plugin", str(bad)]) == 3
-    assert "failed       ZeroDivisionError: division by zero (bad.py, line 1)" in capsys.readouterr().out
+    assert "failed            ZeroDivisionError: division by zero (bad.py, line 1)" in capsys.readouterr().out
     assert main(["plugins", "--plugin", str(bad), "--as", "json"]) == 3
     listed = json.loads(capsys.readouterr().out)["plugins"]
     assert listed[-1]["name"] == "bad" and listed[-1]["place"] == str(bad) and "ZeroDivision" in listed[-1]["failed"]

@@ -84,13 +84,19 @@ def culprits(run: Run) -> str:
     return "\n".join(f"{one['plugin']} {one['rule']} {one['what']}" for one in run.record["problems"])
 
 
+def never_holding(folder: Path) -> int:
+    """The exit status of the last call where nothing may hold."""
+    where = ["--plugin", str(folder / "wild.py"), "--ruleset", str(folder / "house.yaml")]
+    return main(["review", "--demo", *where, "--hold-at", "never", "--report", f"text={folder / 'report.txt'}"])
+
+
 def tags(run: Run) -> Iterable[str]:
     return [tag for one in run.record["problems"] if one["rule"] == NAME for tag in one["circuits"]]
 
 
 @pytest.mark.parametrize("misbehaviour", LOADING)
 def test_a_plugin_that_does_not_load_is_named_and_its_required_rule_holds_the_review(
-    misbehaviour: str, call: Call, undisturbed: dict[str, bytes]
+    misbehaviour: str, call: Call, undisturbed: dict[str, bytes], tmp_path: Path
 ) -> None:
     run = call(LOADING[misbehaviour])
     assert run.results(NAME) == undisturbed
@@ -99,14 +105,14 @@ def test_a_plugin_that_does_not_load_is_named_and_its_required_rule_holds_the_re
     assert set(run.words().values()) == {"not assessed"}
     assert run.record["held"]
     assert run.status == 1
-    assert call(LOADING[misbehaviour], "--hold-at", "never").status == 3
+    assert never_holding(tmp_path) == 3
     (listed,) = [one for one in run.record["plugins"] if one["name"] == "wild"]
     assert TOLD_OF_LOADING[misbehaviour] in listed["failed"]
 
 
 @pytest.mark.parametrize("misbehaviour", RUNNING)
 def test_a_rule_that_misbehaves_on_a_circuit_is_not_assessed_there_and_the_others_say_what_they_said(
-    misbehaviour: str, call: Call, undisturbed: dict[str, bytes]
+    misbehaviour: str, call: Call, undisturbed: dict[str, bytes], tmp_path: Path
 ) -> None:
     run = call(hostile.rule(RUNNING[misbehaviour]))
     assert run.results(NAME) == undisturbed
@@ -116,7 +122,7 @@ def test_a_rule_that_misbehaves_on_a_circuit_is_not_assessed_there_and_the_other
     assert touched
     assert {tag for tag, word in run.words().items() if word == "not assessed"} == touched
     assert run.record["held"] and run.status == 1
-    assert call(hostile.rule(RUNNING[misbehaviour]), "--hold-at", "never").status == 3
+    assert never_holding(tmp_path) == 3
 
 
 def test_a_rule_that_fails_on_one_circuit_is_lost_there_only(call: Call) -> None:
@@ -187,3 +193,10 @@ def test_what_a_failing_rule_says_is_the_same_on_every_run(call: Call) -> None:
     text = hostile.rule("raise RuntimeError(object())\nyield")
     assert call(text).record == call(text).record
     assert "0x" not in culprits(call(text))
+
+
+def test_a_rule_that_asks_for_much_changes_no_figure_that_another_rule_asks_for(call: Call, undisturbed: dict[str, bytes]) -> None:
+    text = hostile.rule(hostile.NOTHING).replace(
+        'figures = ("current",)', 'figures = ("impedance", "resistance", "reactance", "voltage", "active-power", "winding-loss")')
+    text = text.replace('states = ("cold",)', 'states = ("cold", "steady", "switch-on", "stuck-open", "other-frequency")')
+    assert call(text).results(NAME) == undisturbed

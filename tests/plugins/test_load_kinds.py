@@ -351,3 +351,23 @@ def test_two_plugins_cannot_have_a_load_kind_or_a_figure_of_one_name(tmp_path: P
     assert gathered.plugins[-2].failed == ""
     assert "the load kind name 'lamp' is taken by first" in gathered.plugins[-1].failed
     assert "the figure name 'inverse-current of the circuit' is taken by first" in gathered.plugins[-1].failed
+
+
+ON_A_BOARD = (HEAD.replace("circuits:\n", "boards:\n  DB: {fed_from: shore, cable: [{section: 6 mm2, length: 24 m, conductor: copper}]}\n")
+              + "circuits:\n" + (COIL + LAMPS).replace("fed_from: shore", "fed_from: DB"))  # fmt: skip
+
+
+@pytest.mark.parametrize(
+    "changed",
+    [{"impedance": "raise SystemExit(0)"}, {"impedance_formula": "return resistance * float('nan')"}, {"data": "1 / 0"}],
+    ids=["it exits", "it gives no number", "its data fail"],
+)
+def test_what_shares_a_board_with_a_load_that_cannot_be_known_is_not_assessed_rather_than_passed(
+    changed: dict[str, str], tmp_path: Path
+) -> None:
+    sound = reviewed(lamp(tmp_path), ON_A_BOARD)
+    assert circuit(sound, "COIL").coverage["voltage-drop"] == "conforms"
+    record = reviewed(lamp(tmp_path, **changed), ON_A_BOARD)
+    assert circuit(record, "COIL").coverage["voltage-drop"] == "not assessed"
+    needs = {need for check in circuit(record, "COIL").checks if check.rule == "voltage-drop" for need in check.needs}
+    assert needs == {"the data of LAMP", "the data of BOTH"}

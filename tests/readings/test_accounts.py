@@ -14,10 +14,12 @@ from circuitlint import demo
 from circuitlint.cli import main
 from circuitlint.errors import RecordError
 from circuitlint.plugins import gather
+from circuitlint.quantity import write as write_quantity
 from circuitlint.readings.holding import Options
 from circuitlint.readings.test_sheet import make
 from circuitlint.reports import readings, readings_json, readings_page, readings_sheet_page
 from circuitlint.reports.readings_words import with_uncertainty
+from circuitlint.si import DIMENSIONS
 from tests.readings.held import BENCH, held, reviewed
 
 TEXT = """
@@ -161,6 +163,26 @@ def test_the_test_sheet_command_prints_every_form(kind: str, capsys) -> None:
     out = capsys.readouterr().out
     assert "=R3-Y1" in out and "=F1-Y1" not in out
     assert "CAT III 300 V or more" in out
+
+
+def test_every_sheet_of_the_demo_filled_in_as_expected_is_held_without_a_departure(tmp_path: Path, capsys) -> None:
+    assert main(["test-sheet", "--demo", "--report", "json"]) == 0
+    lines = []
+    for circuit in json.loads(capsys.readouterr().out)["circuits"]:
+        for one in circuit["lines"]:
+            if one["lowest"] is not None:
+                dimension = DIMENSIONS[one["dimension"]]
+                shown = write_quantity((one["lowest"] + one["highest"]) / 2.0, dimension)
+                span = "0.5 K" if one["quantity"] == "temperature" else "2 %"
+                lines.append(f'{circuit["tag"]},{one["state"]},{one["of"]},{one["quantity"]},{shown} ± {span}')
+    assert len(lines) > 40
+    definition = write(tmp_path, "d.yaml", demo.content()[1].decode())
+    sheet = write(tmp_path, "s.csv", "tag,state,of,quantity,value\n" + "\n".join(lines) + "\n")
+    file = tmp_path / "r.json"
+    assert main(["readings", definition, sheet, "--report", f"json={file}", "--report", "text", "--report", "html"]) in (0, 1)
+    made = readings_json.load(file.read_bytes())
+    assert len(made.circuits) >= 8
+    assert not [one.tag for one in made.circuits if one.departs]
 
 
 PLUGIN = """

@@ -72,6 +72,7 @@ def test_a_resistance_is_brought_to_the_reference_temperature() -> None:
     line = "  - {{tag: DC, state: cold, four_wire: yes, instrument: ohms, resistance: {} ohm, temperature: {} degC ± 0.1 K}}\n"
     text = line.format(320, 25) + line.format(443.3, 125)
     out = held(METERS + text, options=QUICK)
+    assert {one.name for one in out.readings[0].results} == {"direct-current-resistance", "reference-resistance"}
     both = [result(out, "reference-resistance", number).value for number in (0, 1)]
     assert both[0] == pytest.approx(both[1], rel=2e-4)
 
